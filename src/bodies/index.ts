@@ -1,0 +1,11 @@
+export { EarthAxes, type EarthOrientation, earthRotationAngle } from "./earthRotation.ts";
+export {
+  ellipsoidRadiusTowards,
+  geodeticToFixed,
+  geoidHeight,
+  normalToFixed,
+  normalToFixedRate,
+} from "./ellipsoid.ts";
+export { type FieldSample, geopotentialDegree, oblateness, oblatenessRadius, sampleField } from "./geopotential.ts";
+export { nutation2000B, siderealLessRotation, trueOfDate } from "./precessionNutation.ts";
+export { moonTable, sunMoonSource, sunTable } from "./sunMoon.ts";

@@ -1,0 +1,29 @@
+import { AstroTime, Body, GeoMoon, HelioVector } from "astronomy-engine";
+import { TabulatedFunction } from "../numeric/index.ts";
+import { DAY } from "../units/index.ts";
+
+/** The au of the library's vectors, m (IAU 2012 Resolution B2, exact). */
+const au = 149_597_870_700;
+
+/** Named in the evidence of every answer that used a position of the Sun or the Moon. */
+export const sunMoonSource =
+  "astronomy-engine 2.1.19 (truncated VSOP87 and ELP), tabulated; Sun to 1000 km, Moon to 20 km";
+
+function terrestrialTime(ttSeconds: number): AstroTime {
+  return AstroTime.FromTerrestrialTime(ttSeconds / DAY);
+}
+
+/**
+ * Geocentric positions in metres, axes of J2000.0 (20 milliarcseconds from GCRF, far below the series' own error), by
+ * TT seconds since J2000.0. Geometric: no light time, no aberration.
+ * Accuracy: Sun 1000 km, Moon 20 km, which is 1e-5 of their tides on a clock.
+ */
+export const sunTable = new TabulatedFunction(3, 16 * DAY, 20, (t) => {
+  const earth = HelioVector(Body.Earth, terrestrialTime(t));
+  return [-earth.x * au, -earth.y * au, -earth.z * au];
+});
+
+export const moonTable = new TabulatedFunction(3, 2 * DAY, 14, (t) => {
+  const moon = GeoMoon(terrestrialTime(t));
+  return [moon.x * au, moon.y * au, moon.z * au];
+});

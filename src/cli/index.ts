@@ -1,0 +1,2 @@
+export { type CommandLineParts, runCommandLine } from "./program.ts";
+export { correctionReport } from "./report.ts";

@@ -1,0 +1,134 @@
+import { readFileSync, writeFileSync } from "node:fs";
+import type { Readable, Writable } from "node:stream";
+import { Problem } from "../problem/index.ts";
+import { type Bench, parseJson } from "../wire/index.ts";
+
+/** What a command line works with; nothing of the process is reached for elsewhere. */
+export interface Surroundings {
+  readonly bench: Bench;
+  readonly input: Readable & { isTTY?: boolean };
+  readonly output: Writable;
+  readonly messages: Writable;
+}
+
+export interface WorkOptions {
+  readonly clock?: string;
+  readonly trajectory?: string;
+  readonly request?: string;
+  readonly value?: readonly string[];
+  readonly near?: string;
+  readonly scale?: string;
+  readonly unwrap?: string;
+  readonly terms?: string;
+  readonly out?: string;
+  readonly json?: boolean;
+}
+
+/** Wrong use of the command line, said in one sentence. */
+export class WrongUse extends Error {}
+
+/** Errors: WrongUse (cannot be read), Problem invalid-json naming the file. */
+function readJsonFile(file: string, what: string): unknown {
+  let text: string;
+  try {
+    text = readFileSync(file, "utf8");
+  } catch (error) {
+    throw new WrongUse(`${what} ${file} cannot be read: ${(error as Error).message}`);
+  }
+  try {
+    return parseJson(text.replace(/^\uFEFF/, ""));
+  } catch (error) {
+    if (error instanceof Problem) throw new WrongUse(`${what} ${file}: ${error.message}`);
+    throw error;
+  }
+}
+
+async function readAll(input: Readable): Promise<string> {
+  const chunks: Buffer[] = [];
+  for await (const chunk of input) chunks.push(Buffer.from(chunk as Uint8Array | string));
+  return Buffer.concat(chunks).toString("utf8");
+}
+
+/** Lines of a file or of standard input without blanks and comments. */
+async function readLines(file: string | undefined, { input }: Surroundings): Promise<string[]> {
+  let text: string;
+  if (file === undefined || file === "-") {
+    if (input.isTTY) throw new WrongUse("nothing to work on: name a file, pipe lines in, or use --value");
+    text = await readAll(input);
+  } else {
+    try {
+      text = readFileSync(file, "utf8");
+    } catch (error) {
+      throw new WrongUse(`${file} cannot be read: ${(error as Error).message}`);
+    }
+  }
+  return text
+    .replace(/^\uFEFF/, "")
+    .split(/\r?\n/)
+    .map((line) => line.trim())
+    .filter((line) => line !== "" && !line.startsWith("#"));
+}
+
+/** The body of a request from files and options; `items` turns lines into its list. */
+export async function assembleRequest(
+  file: string | undefined,
+  options: WorkOptions,
+  surroundings: Surroundings,
+  items: (lines: readonly string[], near: string | undefined) => object,
+): Promise<unknown> {
+  if (options.request !== undefined) {
+    if (
+      options.clock !== undefined ||
+      options.trajectory !== undefined ||
+      file !== undefined ||
+      options.value !== undefined
+    ) {
+      throw new WrongUse("--request brings everything with it; leave out --clock, --trajectory, --value and the file");
+    }
+    return options.request === "-"
+      ? parseJson(await readAll(surroundings.input))
+      : readJsonFile(options.request, "the request");
+  }
+  if (options.clock === undefined || options.trajectory === undefined) {
+    throw new WrongUse("--clock FILE and --trajectory FILE are needed (or --request FILE with everything)");
+  }
+  const clock = readJsonFile(options.clock, "the clock");
+  const trajectory = readJsonFile(options.trajectory, "the trajectory");
+  const lines = options.value ?? (await readLines(file, surroundings));
+  if (lines.length === 0) throw new WrongUse("there is nothing to work on: the input has no lines");
+  return {
+    clock,
+    trajectory,
+    ...(options.scale === undefined ? {} : { scale: options.scale }),
+    ...(options.unwrap === undefined ? {} : { unwrap: options.unwrap }),
+    ...(options.terms === undefined ? {} : { terms: options.terms.split(",").map((term) => term.trim()) }),
+    ...items(lines, options.near),
+  };
+}
+
+/** Readings, one a line: the value, and after a comma a rough time if there is one. */
+export const readingItems = (lines: readonly string[], near: string | undefined): object => ({
+  readings: lines.map((line) => {
+    const [reading = "", own] = line.split(",").map((part) => part.trim());
+    const rough = own === undefined || own === "" ? near : own;
+    return { reading, ...(rough === undefined ? {} : { near: rough }) };
+  }),
+});
+
+export const instantItems = (lines: readonly string[]): object => ({ instants: [...lines] });
+
+/** Writes a result to standard output or a file. */
+export async function deliver(text: string, options: WorkOptions, { output }: Surroundings): Promise<void> {
+  if (options.out !== undefined) {
+    try {
+      writeFileSync(options.out, text);
+    } catch (error) {
+      throw new WrongUse(`${options.out} cannot be written: ${(error as Error).message}`);
+    }
+    return;
+  }
+  await new Promise<void>((resolve, reject) => {
+    output.once("error", (error: NodeJS.ErrnoException) => (error.code === "EPIPE" ? resolve() : reject(error)));
+    output.write(text, () => resolve());
+  });
+}

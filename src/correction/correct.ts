@@ -1,0 +1,170 @@
+import { counterModulus, durationToTicks, ticksToDuration } from "../clock/index.ts";
+import { invariant, Problem } from "../problem/index.ts";
+import {
+  addDuration,
+  addDurations,
+  type Duration,
+  durationBetween,
+  formatInstant,
+  isCovered,
+  subtractDurations,
+  toSeconds,
+  zeroDuration,
+} from "../time/index.ts";
+import { clockMinusTt } from "./clockMinusTt.ts";
+import { clockStateAt, isInside, outsideSpan } from "./clockState.ts";
+import type { CorrectedReading, Flag, Reading, Setting, Unwrap } from "./model.ts";
+
+/** The fixed point takes 2 steps at 1e-10, 3 at 1 ppm, 5 at 100 ppm. */
+const mostIterations = 12;
+
+/**
+ * Corrects one reading: counter -> indicated elapsed time (exact) -> the fixed point of
+ * TT = anchor + indicated - (clock - TT)(TT), to below a femtosecond -> an instant rounded once to the picosecond.
+ * Errors: ambiguous-rollover, reading-beyond-width, outside-span, impossible-clock (an oscillator that does not converge).
+ */
+export function correctReading(setting: Setting, reading: Reading, unwrap: Unwrap | null): CorrectedReading {
+  const flags: Flag[] = [];
+  const ticks = elapsedTicks(setting, reading, unwrap, flags);
+  const elapsed = settle(setting, ticksToDuration(ticks, setting.clock.counter.ticksPerSecond));
+  if (!isInside(setting, toSeconds(elapsed))) {
+    throw outsideSpan(setting, "The reading", String(reading.reading), whenInWords(setting, elapsed)).within("reading");
+  }
+  return clockStateAt(setting, elapsed, true, flags);
+}
+
+/** TT since the anchor at which the clock indicates `indicated` since the anchor. */
+function settle(setting: Setting, indicated: Duration): Duration {
+  let elapsed = indicated;
+  // Far outside the span nothing but the oscillator moves it, and no convergence is owed to a reading that is refused.
+  let before = zeroDuration;
+  for (let i = 0; i < mostIterations; i++) {
+    if (Math.abs(elapsed.seconds) > 1e11) return elapsed;
+    const { total } = clockMinusTt(setting, elapsed, true, false);
+    const next = subtractDurations(indicated, total);
+    const moved = subtractDurations(next, elapsed);
+    elapsed = next;
+    if (moved.seconds === 0 && moved.femtoseconds === 0) return elapsed;
+    // Two neighbours a femtosecond apart may alternate; either is right.
+    if (i > 2 && Math.abs(toSeconds(moved)) < 1.5e-15) return elapsed;
+    before = moved;
+  }
+  throw new Problem(
+    "impossible-clock",
+    `The clock's offset changes too fast to be inverted (still moving by ${toSeconds(before).toExponential(1)} s after ${mostIterations} steps).`,
+    [{ place: ["reading"], expected: "an oscillator within some percent of its nominal rate" }],
+  );
+}
+
+function whenInWords(setting: Setting, elapsed: Duration): string {
+  const { clock, leapSeconds } = setting;
+  const at = addDuration(clock.anchor.at, elapsed);
+  if (isCovered(at)) return `at ${formatInstant(at, "UTC", leapSeconds)}`;
+  const seconds = toSeconds(elapsed);
+  return `${Math.abs(seconds).toPrecision(6)} s ${seconds < 0 ? "before" : "after"} the anchor`;
+}
+
+/** Ticks since the anchor, with the rollovers put back. */
+function elapsedTicks(setting: Setting, { reading, near }: Reading, unwrap: Unwrap | null, flags: Flag[]): bigint {
+  const { counter, anchor } = setting.clock;
+  const difference = reading - anchor.reading;
+  if (counter.widthBits === null) return difference;
+  const modulus = counterModulus(counter.widthBits);
+  if (reading < 0n || reading >= modulus) throw beyondWidth(reading, counter.widthBits).within("reading");
+  const turns =
+    near !== null
+      ? turnsNear(setting, difference, modulus, near, flags)
+      : turnsByRule(setting, difference, modulus, unwrap);
+  if (turns !== 0n) flags.unshift("rollover");
+  return difference + turns * modulus;
+}
+
+export function beyondWidth(reading: bigint, widthBits: number): Problem {
+  return new Problem("reading-beyond-width", `The reading ${reading} does not fit a counter of ${widthBits} bits.`, [
+    { place: [], received: String(reading), expected: `0 to 2^${widthBits} - 1 = ${counterModulus(widthBits) - 1n}` },
+  ]);
+}
+
+/** The number of rollovers that brings the reading nearest to a rough time. */
+function turnsNear(
+  setting: Setting,
+  difference: bigint,
+  modulus: bigint,
+  near: NonNullable<Reading["near"]>,
+  flags: Flag[],
+): bigint {
+  const { clock } = setting;
+  const elapsed = durationBetween(clock.anchor.at, near);
+  if (!isInside(setting, toSeconds(elapsed))) {
+    throw outsideSpan(
+      setting,
+      "The rough time",
+      undefined,
+      `at ${formatInstant(near, "UTC", setting.leapSeconds)}`,
+    ).within("near");
+  }
+  const { total } = clockMinusTt(setting, elapsed, false, false);
+  const { ticks } = durationToTicks(addDurations(elapsed, total), { ...clock.counter, stands: "rounded" });
+  const gap = ticks - difference;
+  const turns = roundedQuotient(gap, modulus);
+  // The rough time lies within a thousandth of the middle between two candidates: it does not settle much.
+  const rest = gap - turns * modulus;
+  const fromMiddle = modulus - 2n * (rest < 0n ? -rest : rest);
+  if (fromMiddle * 1000n < modulus) flags.push("ambiguous-rollover");
+  return turns;
+}
+
+function roundedQuotient(a: bigint, b: bigint): bigint {
+  const twice = 2n * a + b;
+  const q = twice / (2n * b);
+  return twice < 0n && twice % (2n * b) !== 0n ? q - 1n : q;
+}
+
+function turnsByRule(setting: Setting, difference: bigint, modulus: bigint, unwrap: Unwrap | null): bigint {
+  if (unwrap === "nearest") return roundedQuotient(-difference, modulus);
+  if (unwrap === "after") return difference >= 0n ? 0n : 1n; // |difference| < modulus
+  if (unwrap === "before") return difference <= 0n ? 0n : -1n;
+  const inside = candidates(setting, difference, modulus);
+  if (inside.length === 1) return inside[0]!.turns;
+  const named = inside.length > 1 ? inside : [];
+  if (named.length === 0) return 0n; // not inside at all: the span test says so
+  const times = named.map(({ elapsed }) => whenInWords(setting, elapsed).replace(/^at /, ""));
+  throw new Problem(
+    "ambiguous-rollover",
+    `The reading could mean ${times[0]} or ${times[1]}: both lie inside the trajectory's span.`,
+    [
+      {
+        place: ["reading"],
+        received: String(difference + setting.clock.anchor.reading),
+        expected: 'a rough time "near", or "unwrap" to say which is meant',
+      },
+    ],
+  );
+}
+
+/**
+ * The rollovers, from the nearest outwards, for which the reading falls into the span: at most two are looked for. The
+ * span's ends are met to a second, with the oscillator and without relativity, so that a question costs no propagation.
+ */
+function candidates(setting: Setting, difference: bigint, modulus: bigint): { turns: bigint; elapsed: Duration }[] {
+  const rate = setting.clock.counter.ticksPerSecond;
+  const out: { turns: bigint; elapsed: Duration }[] = [];
+  const nearest = roundedQuotient(-difference, modulus);
+  for (const turns of [nearest, nearest + 1n, nearest - 1n]) {
+    const indicated = ticksToDuration(difference + turns * modulus, rate);
+    if (Math.abs(indicated.seconds) > 1e11) continue;
+    const elapsed = withoutRelativity(setting, indicated);
+    if (isInside(setting, toSeconds(elapsed))) out.push({ turns, elapsed });
+  }
+  return out;
+}
+
+/** TT since the anchor for an indicated span by the oscillator alone; good to 1e-9 of the span. */
+function withoutRelativity(setting: Setting, indicated: Duration): Duration {
+  const oscillator = setting.clock.oscillator;
+  if (oscillator === null) return indicated;
+  const target = toSeconds(indicated) - (oscillator.offset === null ? 0 : toSeconds(oscillator.offset));
+  const rate = (1 + (oscillator.preset ?? 0)) * (1 + (oscillator.frequency ?? 0));
+  invariant(rate > 0, "an oscillator's rate is positive");
+  return addDurations(indicated, { seconds: Math.round(target / rate - toSeconds(indicated)), femtoseconds: 0 });
+}

@@ -1,0 +1,82 @@
+import type { Counter, Oscillator } from "../clock/index.ts";
+import type { Trajectory } from "../orbit/index.ts";
+import type { ProperTime } from "../relativity/index.ts";
+import type { Duration, Instant, LeapSecondTable } from "../time/index.ts";
+
+/** A clock as the corrections see it. */
+export interface Clock {
+  readonly counter: Counter;
+  readonly anchor: {
+    readonly reading: bigint;
+    readonly at: Instant;
+    /** One sigma of `at`, s. Null: not given. */
+    readonly sigma: number | null;
+  };
+  readonly oscillator: Oscillator | null;
+}
+
+export type Unwrap = "after" | "before" | "nearest";
+
+export interface Reading {
+  readonly reading: bigint;
+  readonly near: Instant | null;
+}
+
+/** All that a correction works with. `properTime` is built once along the trajectory and grows as asked. */
+export interface Setting {
+  readonly clock: Clock;
+  readonly trajectory: Trajectory;
+  readonly properTime: ProperTime;
+  readonly leapSeconds: LeapSecondTable;
+  /** UT1 - UTC and the pole were given. */
+  readonly earthOrientationGiven: boolean;
+}
+
+export type Flag =
+  | "rollover"
+  | "ambiguous-rollover"
+  | "before-anchor"
+  | "implausible-orbit"
+  | "coarse-ephemeris"
+  | "leap-second"
+  | "leap-table-expired";
+
+export interface TermValue {
+  readonly term: string;
+  readonly label: string;
+  /** d(clock - TT)/dTT at the instant. */
+  readonly rate: number;
+  /** Since the anchor. */
+  readonly accumulated: Duration;
+}
+
+export interface UncertaintyItem {
+  readonly source: string;
+  readonly type: "A" | "B";
+  /** One standard uncertainty, s. */
+  readonly sigma: number;
+  /** With what the error is common: nothing ("row"), the neighbours ("pass"), the whole log. */
+  readonly shared: "row" | "pass" | "log";
+}
+
+/** Clock minus TT at one instant, with everything that is said of it. */
+export interface ClockState {
+  readonly at: Instant;
+  /** TT since the anchor. */
+  readonly elapsed: Duration;
+  readonly terms: readonly TermValue[];
+  readonly clockMinusTt: Duration;
+  readonly uncertainty: readonly UncertaintyItem[];
+  /** s. */
+  readonly combinedSigma: number;
+  readonly flags: readonly Flag[];
+}
+
+export type CorrectedReading = ClockState;
+
+export interface PredictedReading extends ClockState {
+  readonly reading: bigint;
+  /** Part of a tick beyond the reading. */
+  readonly fraction: number;
+  readonly sigmaTicks: number;
+}

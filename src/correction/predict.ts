@@ -1,0 +1,31 @@
+import { counterModulus, durationToTicks, tickSeconds, wrap } from "../clock/index.ts";
+import { addDurations, durationBetween, formatInstant, type Instant, toSeconds } from "../time/index.ts";
+import { clockStateAt, isInside, outsideSpan } from "./clockState.ts";
+import type { Flag, PredictedReading, Setting } from "./model.ts";
+
+/**
+ * What the counter shows at an instant: the inverse of correctReading. The latch belongs to a reading, not to the clock,
+ * so it is not among the terms; what lies beyond the shown value is `fraction`.
+ * Errors: outside-span.
+ */
+export function predictReading(setting: Setting, instant: Instant): PredictedReading {
+  const { clock } = setting;
+  const elapsed = durationBetween(clock.anchor.at, instant);
+  if (!isInside(setting, toSeconds(elapsed))) {
+    const text = formatInstant(instant, "UTC", setting.leapSeconds);
+    throw outsideSpan(setting, "The instant", text, `at ${text}`);
+  }
+  const flags: Flag[] = [];
+  const state = clockStateAt(setting, elapsed, false, []);
+  const { ticks, fraction } = durationToTicks(addDurations(elapsed, state.clockMinusTt), clock.counter);
+  const total = clock.anchor.reading + ticks;
+  const reading = clock.counter.widthBits === null ? total : wrap(total, counterModulus(clock.counter.widthBits));
+  if (reading !== total) flags.push("rollover");
+  return {
+    ...state,
+    flags: [...flags, ...state.flags],
+    reading,
+    fraction,
+    sigmaTicks: state.combinedSigma / tickSeconds(clock.counter.ticksPerSecond),
+  };
+}

@@ -1,0 +1,104 @@
+import { type EarthOrientation, sunMoonSource } from "../bodies/index.ts";
+import { counterModulus } from "../clock/index.ts";
+import { buildTrajectory, type TrajectoryDescription } from "../orbit/index.ts";
+import { at, type Notice } from "../problem/index.ts";
+import { type PhysicalTermName, ProperTime, physicalTermNames, rateTerms } from "../relativity/index.ts";
+import { formatInstant, type Instant, type LeapSecondTable } from "../time/index.ts";
+import { outsideSpan } from "./clockState.ts";
+import { beyondWidth } from "./correct.ts";
+import type { Clock, Setting } from "./model.ts";
+
+/** UT1 - UTC (s) and pole coordinates (rad); null: not given. */
+export interface GivenOrientation {
+  readonly ut1MinusUtc: number | null;
+  readonly xPole: number | null;
+  readonly yPole: number | null;
+}
+
+/** What a trajectory and its integral are made of. */
+export interface PathRequest {
+  readonly trajectory: TrajectoryDescription;
+  readonly orientation: GivenOrientation;
+  /** Null: all of them. */
+  readonly terms: readonly PhysicalTermName[] | null;
+  /** The anchor's instant: the integral is counted from there. */
+  readonly anchor: Instant;
+}
+
+/** Makes the integral along a trajectory; the only costly part, so callers may keep it by the digest of its request. */
+export function buildProperTime(request: PathRequest, leapSeconds: LeapSecondTable): ProperTime {
+  const { orientation, anchor } = request;
+  // UT1 - TAI is held constant from the anchor on: UT1 - UTC jumps with a leap second, UT1 - TAI does not.
+  const earth: EarthOrientation = {
+    ut1MinusTai: (orientation.ut1MinusUtc ?? 0) - leapSeconds.taiMinusUtc(anchor),
+    xPole: orientation.xPole ?? 0,
+    yPole: orientation.yPole ?? 0,
+  };
+  const trajectory = at(["trajectory"], () => buildTrajectory(request.trajectory, earth, anchor));
+  const chosen = request.terms;
+  const terms = rateTerms.filter(({ term }) => chosen === null || (chosen as readonly string[]).includes(term));
+  const origin = anchor.seconds - trajectory.reference.seconds;
+  return new ProperTime(trajectory, terms, Math.min(trajectory.to, Math.max(trajectory.from, origin)));
+}
+
+/** Ties a clock to a path. Errors: outside-span (the anchor), reading-beyond-width (its reading). */
+export function makeSetting(
+  clock: Clock,
+  properTime: ProperTime,
+  orientation: GivenOrientation,
+  leapSeconds: LeapSecondTable,
+): Setting {
+  const { widthBits } = clock.counter;
+  const { reading } = clock.anchor;
+  if (widthBits !== null && (reading < 0n || reading >= counterModulus(widthBits))) {
+    throw beyondWidth(reading, widthBits).within("clock", "anchor", "reading");
+  }
+  const { trajectory } = properTime;
+  const setting: Setting = {
+    clock,
+    trajectory,
+    properTime,
+    leapSeconds,
+    earthOrientationGiven: orientation.ut1MinusUtc !== null,
+  };
+  const start = clock.anchor.at.seconds - trajectory.reference.seconds;
+  const exact = start + (clock.anchor.at.picoseconds - trajectory.reference.picoseconds) / 1e12;
+  if (exact < trajectory.from || exact > trajectory.to) {
+    const text = formatInstant(clock.anchor.at, "UTC", leapSeconds);
+    throw outsideSpan(setting, "The anchor", text, `at ${text}`).within("clock", "anchor", "at");
+  }
+  return setting;
+}
+
+/** Remarks that hold for a whole answer. `leapTableExpired`: a result lies after the table's expiry. */
+export function settingNotices(setting: Setting, leapTableExpired: boolean): Notice[] {
+  const { trajectory, properTime } = setting;
+  const out: Notice[] = trajectory.notices.map((notice) => ({
+    ...notice,
+    place: ["trajectory", ...(notice.place ?? [])],
+  }));
+  const left = physicalTermNames.filter((name) => !properTime.terms.some(({ term }) => term === name));
+  if (left.length > 0) {
+    out.push({ code: "terms-left-out", text: `Left out as asked: ${left.join(", ")}.`, place: ["terms"] });
+  }
+  if (!setting.earthOrientationGiven) {
+    out.push({
+      code: "earth-orientation-not-given",
+      text: "UT1 - UTC and the pole were not given and are taken as zero; the uncertainty carries what that may cost.",
+    });
+  }
+  if (leapTableExpired) {
+    const day = formatInstant(setting.leapSeconds.expires, "UTC", setting.leapSeconds).slice(0, 10);
+    out.push({
+      code: "leap-table-expired",
+      text: `A result lies after ${day}, when the leap-second table expires: its UTC may be off by a whole second.`,
+    });
+  }
+  return out;
+}
+
+/** Where the Sun and the Moon came from; null when neither was used. */
+export function ephemerisUsed({ trajectory, properTime }: Setting): string | null {
+  const tides = properTime.terms.some(({ needs }) => needs.includes("sun") || needs.includes("moon"));
+  return trajectory.usesSunMoon || tides ? sunMoonSource : null;
+}

@@ -1,0 +1,2 @@
+export { createHttpApp } from "./app.ts";
+export { interfaceDocument } from "./interfaceDocument.ts";

@@ -1,0 +1,18 @@
+export { antiderivative, ChebyshevBasis, evaluateSeries } from "./chebyshev.ts";
+export { addToTwoPart, multiplyTwoPart, scaleTwoPart, type TwoPart, twoProduct, twoSum } from "./errorfree.ts";
+export { accumulateKnot, interpolateStates, slopeAtKnot } from "./hermite.ts";
+export { TabulatedFunction } from "./tabulated.ts";
+export {
+  add,
+  axisRotation,
+  cross,
+  dot,
+  type Mat3,
+  multiply,
+  multiplyTransposed,
+  norm,
+  product,
+  scale,
+  subtract,
+  type Vec3,
+} from "./vector.ts";

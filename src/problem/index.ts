@@ -1,0 +1,12 @@
+export { type NoticeCode, noticeCatalogue, type ProblemCode, problemCatalogue } from "./catalogue.ts";
+export {
+  at,
+  BrokenInvariant,
+  type Fault,
+  forEachItem,
+  invariant,
+  mostFaults,
+  type Notice,
+  type Place,
+  Problem,
+} from "./problem.ts";

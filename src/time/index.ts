@@ -1,0 +1,36 @@
+export { calendarDate, dayNumber } from "./calendar.ts";
+export { daysUntil, displayDate } from "./display.ts";
+export {
+  addDurations,
+  type Duration,
+  durationFromNanoseconds,
+  durationFromSeconds,
+  formatDuration,
+  negate,
+  subtractDurations,
+  sumDurations,
+  toNanoseconds,
+  toSeconds,
+  toTwoPartSeconds,
+  zeroDuration,
+} from "./duration.ts";
+export {
+  addDuration,
+  addSeconds,
+  compareInstants,
+  durationBetween,
+  earlier,
+  type Instant,
+  later,
+  secondsBetween,
+} from "./instant.ts";
+export { defaultLeapSeconds, LeapSecondTable } from "./leapSeconds.ts";
+export {
+  formatInstant,
+  isCovered,
+  isInLeapSecond,
+  parseInstant,
+  type Scale,
+  scales,
+  ttSecondsSinceJ2000,
+} from "./scales.ts";

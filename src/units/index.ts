@@ -1,0 +1,12 @@
+export {
+  C,
+  C2,
+  type Constant,
+  constants,
+  EARTH_ROTATION,
+  GM_EARTH,
+  GM_MOON,
+  GM_SUN,
+  LG,
+} from "./constants.ts";
+export { ARCSECOND, DAY, DEGREE, KM, NS } from "./si.ts";

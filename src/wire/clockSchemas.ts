@@ -1,0 +1,75 @@
+import { counterValueSchema, instantSchema, number, sigma } from "./sharedSchemas.ts";
+import { z } from "./zod.ts";
+
+export const counterSchema = z
+  .strictObject({
+    ticksPerSecond: z
+      .union([
+        z.number().gt(0),
+        z
+          .string()
+          .max(120)
+          .regex(/^\d+\/\d+$/),
+      ])
+      .openapi({
+        description: 'Nominal rate: a number, taken as its shortest decimal exactly, or "num/den".',
+        example: 32768,
+      }),
+    widthBits: z
+      .int()
+      .min(1)
+      .max(128)
+      .optional()
+      .openapi({ description: "The counter rolls over after 2^widthBits ticks." }),
+    stands: z.enum(["edge", "truncated", "rounded"]).optional().openapi({
+      description:
+        "What a reading stands for: the instant at which the counter became it (edge, the default), or some moment while it showed it (truncated: half a tick is added), or the nearest tick (rounded).",
+    }),
+  })
+  .openapi("Counter");
+
+export const oscillatorSchema = z
+  .strictObject({
+    offsetNs: number.optional(),
+    presetFractional: number
+      .gt(-0.5)
+      .lt(0.5)
+      .optional()
+      .openapi({ description: "Deliberate fractional frequency offset given before launch." }),
+    frequencyOffset: number
+      .gt(-0.5)
+      .lt(0.5)
+      .optional()
+      .openapi({ description: "What is left of the fractional frequency." }),
+    agingPerDay: number
+      .gt(-0.01)
+      .lt(0.01)
+      .optional()
+      .openapi({ description: "Change of the fractional frequency per day." }),
+    nominalHz: number.gt(0).optional(),
+    frequencySigma: sigma.optional(),
+    agingSigmaPerDay: sigma.optional(),
+    covariance: z
+      .array(z.array(number).min(3).max(3))
+      .min(3)
+      .max(3)
+      .optional()
+      .openapi({ description: "Of offset (ns), frequency (1) and ageing (1/day); instead of the sigmas." }),
+  })
+  .openapi("Oscillator");
+
+export const clockSchema = z
+  .strictObject({
+    counter: counterSchema,
+    anchor: z
+      .strictObject({
+        reading: counterValueSchema,
+        at: instantSchema.openapi({
+          description: "The instant on board at which the counter became `reading`, not that of ground receipt.",
+        }),
+        sigmaNs: sigma.optional(),
+      })
+      .openapi("Anchor", { description: "The reading and the instant at which the clock model starts." }),
+    oscillator: oscillatorSchema.optional(),
+  })
+  .openapi("Clock");

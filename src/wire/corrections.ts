@@ -1,0 +1,131 @@
+import {
+  buildProperTime,
+  type ClockState,
+  canonicalDigest,
+  correctReading,
+  makeEvidence,
+  makeSetting,
+  type PathRequest,
+  predictReading,
+  type Setting,
+  settingNotices,
+} from "../correction/index.ts";
+import { forEachItem } from "../problem/index.ts";
+import type { ProperTime } from "../relativity/index.ts";
+import { formatDuration, formatInstant, type LeapSecondTable, toNanoseconds } from "../time/index.ts";
+import {
+  type CorrectionRequest,
+  type CorrectionResponse,
+  correctionRequestSchema,
+  type PredictionRequest,
+  type PredictionResponse,
+  predictionRequestSchema,
+} from "./correctionSchemas.ts";
+import { readClockAndPath, readInstants, readReadings } from "./fromRequest.ts";
+import { writeCounterValue } from "./instants.ts";
+import { writeNotice } from "./problemDetails.ts";
+import { validate } from "./validate.ts";
+
+/** What a call works with besides its request. */
+export interface Bench {
+  readonly leapSeconds: LeapSecondTable;
+  readonly version: string;
+  /** Gives the integral for a digest of its request: from a store of earlier ones, or by `build`. */
+  readonly properTime: (digest: string, build: () => ProperTime) => ProperTime;
+}
+
+/** A bench that keeps nothing. */
+export const plainBench = (leapSeconds: LeapSecondTable, version: string): Bench => ({
+  leapSeconds,
+  version,
+  properTime: (_, build) => build(),
+});
+
+type Shared = Pick<CorrectionRequest, "clock" | "trajectory" | "terms" | "earthOrientation">;
+
+function prepare(request: Shared, bench: Bench): Setting {
+  const { clock, path } = readClockAndPath(request, bench.leapSeconds);
+  const properTime = bench.properTime(pathDigest(request), () => build(path, bench.leapSeconds));
+  return makeSetting(clock, properTime, path.orientation, bench.leapSeconds);
+}
+
+const build = (path: PathRequest, leapSeconds: LeapSecondTable): ProperTime => buildProperTime(path, leapSeconds);
+
+function pathDigest({ clock, trajectory, terms, earthOrientation }: Shared): string {
+  return canonicalDigest({
+    anchor: clock.anchor.at,
+    trajectory,
+    terms: terms ?? null,
+    earthOrientation: earthOrientation ?? null,
+  });
+}
+
+/** POST /v1/corrections and `tauline correct`: a parsed JSON value in, the answer out. All or nothing. */
+export function corrections(body: unknown, bench: Bench): CorrectionResponse {
+  const request: CorrectionRequest = validate(correctionRequestSchema, body);
+  const readings = readReadings(request.readings, bench.leapSeconds);
+  const setting = prepare(request, bench);
+  const scale = request.scale ?? "UTC";
+  const corrected = forEachItem(["readings"], readings, (reading) =>
+    correctReading(setting, reading, request.unwrap ?? null),
+  );
+  const results = corrected.map((result, i) => {
+    const { id, reading } = request.readings[i]!;
+    return {
+      ...(id === undefined ? {} : { id }),
+      reading,
+      corrected: formatInstant(result.at, scale, bench.leapSeconds),
+      scale,
+      ...writeState(result),
+    };
+  });
+  return { results, ...close(request, setting, corrected, bench) };
+}
+
+/** POST /v1/predicted-readings and `tauline predict`. All or nothing. */
+export function predictedReadings(body: unknown, bench: Bench): PredictionResponse {
+  const request: PredictionRequest = validate(predictionRequestSchema, body);
+  const instants = readInstants(request.instants, bench.leapSeconds);
+  const setting = prepare(request, bench);
+  const scale = request.scale ?? "UTC";
+  const predicted = forEachItem(["instants"], instants, (instant) => predictReading(setting, instant));
+  const results = predicted.map((result) => ({
+    at: formatInstant(result.at, scale, bench.leapSeconds),
+    scale,
+    reading: writeCounterValue(result.reading),
+    fraction: result.fraction,
+    sigmaTicks: result.sigmaTicks,
+    ...writeState(result),
+  }));
+  return { results, ...close(request, setting, predicted, bench) };
+}
+
+function writeState(state: ClockState) {
+  return {
+    clockMinusTt: formatDuration(state.clockMinusTt),
+    clockMinusTtNs: toNanoseconds(state.clockMinusTt),
+    terms: state.terms.map(({ term, label, rate, accumulated }) => ({
+      term,
+      label,
+      rate,
+      accumulated: formatDuration(accumulated),
+      accumulatedNs: toNanoseconds(accumulated),
+    })),
+    uncertaintyNs: state.combinedSigma * 1e9,
+    uncertainty: state.uncertainty.map(({ source, type, sigma, shared }) => ({
+      source,
+      type,
+      ns: sigma * 1e9,
+      shared,
+    })),
+    flags: [...state.flags],
+  };
+}
+
+function close(request: unknown, setting: Setting, states: readonly ClockState[], bench: Bench) {
+  const expired = states.some(({ flags }) => flags.includes("leap-table-expired"));
+  return {
+    evidence: makeEvidence(request, setting, bench.version),
+    notices: settingNotices(setting, expired).map(writeNotice),
+  };
+}

@@ -1,0 +1,189 @@
+import { type Counter, decimalRational, type Oscillator, type Rational, rational } from "../clock/index.ts";
+import type { Clock, GivenOrientation, PathRequest, Reading } from "../correction/index.ts";
+import type { StateError, TrajectoryDescription } from "../orbit/index.ts";
+import { at, forEachItem, Problem } from "../problem/index.ts";
+import { durationFromNanoseconds, type Instant, type LeapSecondTable } from "../time/index.ts";
+import { ARCSECOND, DAY, DEGREE, KM, NS } from "../units/index.ts";
+import type { CorrectionRequest, PredictionRequest } from "./correctionSchemas.ts";
+import { type InstantIn, readCounterValue, readInstant } from "./instants.ts";
+
+/** Text and km to domain values and SI. Every error carries the place in the request. */
+
+type Triple = readonly [number, number, number];
+
+const scaled = (v: Triple, k: number): Triple => [v[0] * k, v[1] * k, v[2] * k];
+const orNull = (value: number | undefined, k = 1): number | null => (value === undefined ? null : value * k);
+
+function readRate(value: number | string): Rational {
+  const text = String(value);
+  const [numerator, denominator] = text.split("/");
+  const fault = (detail: string, expected: string) =>
+    new Problem("impossible-clock", detail, [{ place: [], received: value, expected }]);
+  const rate =
+    denominator === undefined
+      ? decimalRational(text)
+      : BigInt(denominator) === 0n
+        ? null
+        : rational(BigInt(numerator!), BigInt(denominator));
+  if (rate === null || rate.numerator === 0n) {
+    throw fault(`The tick rate ${text} is no positive number.`, 'a positive number or "num/den" with both above zero');
+  }
+  const size = Number(rate.numerator) / Number(rate.denominator);
+  if (!(size >= 1e-6 && size <= 1e12)) {
+    throw fault(`A counter of ${text} ticks a second is out of reach.`, "from 1e-6 to 1e12 ticks a second");
+  }
+  return rate;
+}
+
+export function readClock(clock: CorrectionRequest["clock"], leapSeconds: LeapSecondTable): Clock {
+  const counter: Counter = {
+    ticksPerSecond: at(["counter", "ticksPerSecond"], () => readRate(clock.counter.ticksPerSecond)),
+    widthBits: clock.counter.widthBits ?? null,
+    stands: clock.counter.stands ?? "edge",
+  };
+  const instant = at(["anchor", "at"], () => readInstant(clock.anchor.at, leapSeconds));
+  return {
+    counter,
+    anchor: { reading: readCounterValue(clock.anchor.reading), at: instant, sigma: orNull(clock.anchor.sigmaNs, NS) },
+    oscillator: clock.oscillator === undefined ? null : at(["oscillator"], () => readOscillator(clock.oscillator!)),
+  };
+}
+
+function readOscillator(given: NonNullable<CorrectionRequest["clock"]["oscillator"]>): Oscillator {
+  const { covariance, frequencySigma, agingSigmaPerDay } = given;
+  if (covariance !== undefined && (frequencySigma !== undefined || agingSigmaPerDay !== undefined)) {
+    throw new Problem("impossible-clock", "Both a covariance and single sigmas were given; they would count twice.", [
+      { place: ["covariance"], expected: "either covariance, or frequencySigma and agingSigmaPerDay" },
+    ]);
+  }
+  if (covariance !== undefined) requireCovariance(covariance, "covariance");
+  const units = [NS, 1, 1 / DAY];
+  return {
+    offset: given.offsetNs === undefined ? null : durationFromNanoseconds(given.offsetNs),
+    preset: given.presetFractional ?? null,
+    frequency: given.frequencyOffset ?? null,
+    aging: orNull(given.agingPerDay, 1 / DAY),
+    frequencySigma: frequencySigma ?? null,
+    agingSigma: orNull(agingSigmaPerDay, 1 / DAY),
+    covariance: covariance?.flatMap((row, i) => row.map((value, j) => value * units[i]! * units[j]!)) ?? null,
+  };
+}
+
+/** Errors: impossible-clock or impossible-state when a matrix is not symmetric or has a negative variance. */
+function requireCovariance(
+  matrix: readonly (readonly number[])[],
+  field: string,
+  code: "impossible-clock" | "impossible-state" = "impossible-clock",
+): void {
+  for (const [i, row] of matrix.entries()) {
+    if (row[i]! < 0) {
+      throw new Problem(code, `The covariance has a negative variance in row ${i + 1}.`, [
+        { place: [field, i, i], received: row[i], expected: "a variance of zero or more" },
+      ]);
+    }
+    for (const [j, value] of row.entries()) {
+      const other = matrix[j]![i]!;
+      const most = Math.sqrt(Math.max(0, row[i]!) * Math.max(0, matrix[j]![j]!));
+      if (Math.abs(value - other) > 1e-9 * Math.max(Math.abs(value), Math.abs(other))) {
+        throw new Problem(code, `The covariance is not symmetric in row ${i + 1}, column ${j + 1}.`, [
+          { place: [field, i, j], received: value, expected: `${other}, as on the other side of the diagonal` },
+        ]);
+      }
+      if (Math.abs(value) > most * (1 + 1e-9)) {
+        throw new Problem(code, `The covariance gives a correlation beyond 1 in row ${i + 1}, column ${j + 1}.`, [
+          { place: [field, i, j], received: value, expected: `at most ${most} in size` },
+        ]);
+      }
+    }
+  }
+}
+
+export function readTrajectory(
+  given: CorrectionRequest["trajectory"],
+  leapSeconds: LeapSecondTable,
+): TrajectoryDescription {
+  const instant = (value: InstantIn, ...place: (string | number)[]): Instant =>
+    at(place, () => readInstant(value, leapSeconds));
+  switch (given.kind) {
+    case "state-vector":
+      return {
+        kind: given.kind,
+        frame: given.frame,
+        epoch: instant(given.epoch, "epoch"),
+        position: scaled(given.positionKm, KM),
+        velocity: scaled(given.velocityKmPerS, KM),
+        error: readStateError(given),
+      };
+    case "state-table":
+      return {
+        kind: given.kind,
+        frame: given.frame,
+        states: forEachItem(["states"], given.states, (state) => ({
+          epoch: instant(state.epoch, "epoch"),
+          position: scaled(state.positionKm, KM),
+          velocity: state.velocityKmPerS === undefined ? null : scaled(state.velocityKmPerS, KM),
+        })),
+      };
+    case "surface":
+      return { kind: given.kind, heightOf: given.heightOf, ...readPoint(given) };
+    case "track":
+      return {
+        kind: given.kind,
+        heightOf: given.heightOf,
+        points: forEachItem(["points"], given.points, (point) => ({
+          at: instant(point.at, "at"),
+          ...readPoint(point),
+        })),
+      };
+  }
+}
+
+const readPoint = (point: { latitudeDeg: number; longitudeDeg: number; heightM: number }) => ({
+  latitude: point.latitudeDeg * DEGREE,
+  longitude: point.longitudeDeg * DEGREE,
+  height: point.heightM,
+});
+
+function readStateError(given: Extract<CorrectionRequest["trajectory"], { kind: "state-vector" }>): StateError {
+  const { covarianceRtn } = given;
+  if (covarianceRtn !== undefined) {
+    if (given.positionSigmaKm !== undefined || given.velocitySigmaKmPerS !== undefined) {
+      throw new Problem("impossible-state", "Both a covariance and single sigmas were given; they would count twice.", [
+        { place: ["covarianceRtn"], expected: "either covarianceRtn, or positionSigmaKm and velocitySigmaKmPerS" },
+      ]);
+    }
+    requireCovariance(covarianceRtn, "covarianceRtn", "impossible-state");
+  }
+  return {
+    positionSigma: orNull(given.positionSigmaKm, KM),
+    velocitySigma: orNull(given.velocitySigmaKmPerS, KM),
+    semiMajorAxisSigma: orNull(given.semiMajorAxisSigmaKm, KM),
+    covarianceRtn: covarianceRtn?.flat().map((value) => value * KM * KM) ?? null,
+  };
+}
+
+export const readOrientation = (given: CorrectionRequest["earthOrientation"]): GivenOrientation => ({
+  ut1MinusUtc: given?.ut1MinusUtcS ?? null,
+  xPole: orNull(given?.xPoleArcsec, ARCSECOND),
+  yPole: orNull(given?.yPoleArcsec, ARCSECOND),
+});
+
+export const readReadings = (given: CorrectionRequest["readings"], leapSeconds: LeapSecondTable): Reading[] =>
+  forEachItem(["readings"], given, ({ reading, near }) => ({
+    reading: readCounterValue(reading),
+    near: near === undefined ? null : at(["near"], () => readInstant(near, leapSeconds)),
+  }));
+
+export const readInstants = (given: PredictionRequest["instants"], leapSeconds: LeapSecondTable): Instant[] =>
+  forEachItem(["instants"], given, (value) => readInstant(value, leapSeconds));
+
+/** Clock and path of a request, both read, nothing computed. */
+export function readClockAndPath(
+  request: Pick<CorrectionRequest, "clock" | "trajectory" | "terms" | "earthOrientation">,
+  leapSeconds: LeapSecondTable,
+): { clock: Clock; path: PathRequest } {
+  const clock = at(["clock"], () => readClock(request.clock, leapSeconds));
+  const trajectory = at(["trajectory"], () => readTrajectory(request.trajectory, leapSeconds));
+  const orientation = readOrientation(request.earthOrientation);
+  return { clock, path: { trajectory, orientation, terms: request.terms ?? null, anchor: clock.anchor.at } };
+}

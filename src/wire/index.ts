@@ -1,0 +1,16 @@
+export { caution } from "./caution.ts";
+export {
+  type CorrectionRequest,
+  type CorrectionResponse,
+  correctionRequestSchema,
+  correctionResponseSchema,
+  type PredictionRequest,
+  type PredictionResponse,
+  predictionRequestSchema,
+  predictionResponseSchema,
+} from "./correctionSchemas.ts";
+export { type Bench, corrections, plainBench, predictedReadings } from "./corrections.ts";
+export { jsonPointer, type ProblemDetails, problemDetails } from "./problemDetails.ts";
+export { problemSchema } from "./sharedSchemas.ts";
+export { parseJson, validate } from "./validate.ts";
+export { z } from "./zod.ts";

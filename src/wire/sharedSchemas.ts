@@ -1,0 +1,114 @@
+import { scales } from "../time/index.ts";
+import { z } from "./zod.ts";
+
+/** Shapes that several calls share. Plain: no transforms, so the interface document can be made from them. */
+
+export const number = z.number();
+export const positive = z.number().gt(0);
+export const sigma = z.number().min(0);
+
+export const scaleSchema = z.enum(scales).openapi("Scale", {
+  description: "Time scale. UTC has leap seconds; TAI, TT and GPS run evenly beside it.",
+});
+
+export const instantSchema = z
+  .union([z.string().max(60), z.strictObject({ at: z.string().max(60), scale: scaleSchema })])
+  .openapi("InstantIn", {
+    description:
+      "ISO 8601 with up to 12 decimals. A string is UTC and ends in Z (calendar date or day of year, 23:59:60 where there was a leap second). Any other scale: an object; there only UTC ends in Z.",
+    example: "2026-03-01T00:00:00.5Z",
+  });
+
+export const counterValueSchema = z
+  .union([
+    z.int(),
+    z
+      .string()
+      .max(120)
+      .regex(/^-?\d+$/),
+  ])
+  .openapi("CounterValue", {
+    description:
+      "A JSON integer up to 2^53 - 1, or a decimal string of any size (to 120 digits). Negative only without widthBits.",
+    example: "48213377",
+  });
+
+export const vectorSchema = z
+  .tuple([number, number, number])
+  .openapi({ minItems: 3, maxItems: 3, description: "x, y, z" });
+
+export const termValueSchema = z
+  .strictObject({
+    term: z.string(),
+    label: z.string(),
+    rate: number.openapi({ description: "d(clock - TT)/dTT at the instant, dimensionless." }),
+    accumulated: z.string().openapi({
+      description: "Since the anchor, seconds, 15 decimals; these add up exactly.",
+      example: "-0.000038123456789",
+    }),
+    accumulatedNs: number.openapi({ description: "The same in nanoseconds, rounded to a double." }),
+  })
+  .openapi("TermValue", {
+    description: "One named contribution to clock minus TT; positive makes the clock run ahead.",
+  });
+
+export const uncertaintyItemSchema = z
+  .strictObject({
+    source: z.string(),
+    type: z.enum(["A", "B"]),
+    ns: sigma.openapi({ description: "One standard uncertainty (k = 1), nanoseconds." }),
+    shared: z.enum(["row", "pass", "log"]).openapi({
+      description: "With what the error is common: this row only, the neighbouring rows, the whole log.",
+    }),
+  })
+  .openapi("UncertaintyItem");
+
+export const flagSchema = z
+  .enum([
+    "rollover",
+    "ambiguous-rollover",
+    "before-anchor",
+    "implausible-orbit",
+    "coarse-ephemeris",
+    "leap-second",
+    "leap-table-expired",
+  ])
+  .openapi("Flag", { description: "A short word that says why to distrust a row, or how it was read." });
+
+export const noticeSchema = z
+  .strictObject({ code: z.string(), text: z.string(), pointer: z.string().optional() })
+  .openapi("Notice", { description: "A remark that travels with a good answer." });
+
+export const evidenceSchema = z
+  .strictObject({
+    inputsSha256: z.string().openapi({ description: "SHA-256 of the RFC 8785 canonical JSON of the request." }),
+    constants: z.record(z.string(), number).openapi({ description: "Physical constants in force, SI units." }),
+    leapSeconds: z.strictObject({ source: z.string(), expires: z.string() }),
+    ephemeris: z
+      .string()
+      .nullable()
+      .openapi({ description: "Where the Sun and the Moon came from; null when unused." }),
+    version: z.string(),
+  })
+  .openapi("Evidence", { description: "What makes a result repeatable: the same request gives the same bytes." });
+
+export const problemSchema = z
+  .strictObject({
+    type: z
+      .string()
+      .openapi({ description: "Names the kind of problem; see the catalogue.", example: "/problems/outside-span" }),
+    title: z.string(),
+    status: z.int(),
+    detail: z.string(),
+    instance: z.string().optional().openapi({ description: "The request id." }),
+    faults: z
+      .array(
+        z.strictObject({
+          pointer: z.string().openapi({ description: "RFC 6901 pointer into the request." }),
+          received: z.unknown().optional(),
+          expected: z.string(),
+        }),
+      )
+      .optional(),
+  })
+  .openapi("Problem", { description: "Problem details, RFC 9457." });

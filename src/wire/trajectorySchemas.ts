@@ -1,0 +1,88 @@
+import { frames } from "../orbit/index.ts";
+import { instantSchema, number, sigma, vectorSchema } from "./sharedSchemas.ts";
+import { z } from "./zod.ts";
+
+const frameSchema = z.enum(frames).openapi("Frame", {
+  description:
+    "GCRF: geocentric celestial. EME2000: mean equator and equinox of J2000.0. ICRF: axes of GCRF, centre Earth. ITRF: Earth-fixed, its velocity relative to the rotating Earth.",
+});
+
+const center = z.literal("Earth").optional();
+
+const stateVectorSchema = z
+  .strictObject({
+    kind: z.literal("state-vector"),
+    frame: frameSchema,
+    center,
+    epoch: instantSchema,
+    positionKm: vectorSchema,
+    velocityKmPerS: vectorSchema,
+    positionSigmaKm: sigma.optional(),
+    velocitySigmaKmPerS: sigma.optional(),
+    semiMajorAxisSigmaKm: sigma.optional(),
+    covarianceRtn: z
+      .array(z.array(number).min(6).max(6))
+      .min(6)
+      .max(6)
+      .optional()
+      .openapi({ description: "Radial, transverse, normal position (km) and velocity (km/s)." }),
+    basis: z.enum(["predicted", "reconstructed"]).optional(),
+  })
+  .openapi("StateVector", { description: "One state, propagated at most 400 days either way." });
+
+const stateTableSchema = z
+  .strictObject({
+    kind: z.literal("state-table"),
+    frame: frameSchema,
+    center,
+    states: z
+      .array(
+        z.strictObject({ epoch: instantSchema, positionKm: vectorSchema, velocityKmPerS: vectorSchema.optional() }),
+      )
+      .min(2)
+      .max(200_000),
+    basis: z.enum(["predicted", "reconstructed"]).optional(),
+  })
+  .openapi("StateTable", { description: "States in rising order, interpolated inside and never used outside." });
+
+const place = {
+  latitudeDeg: number.min(-90).max(90),
+  longitudeDeg: number.min(-360).max(360),
+  heightM: number.min(-12_000).max(100_000),
+};
+
+const heightOf = z
+  .enum(["ellipsoid", "geoid"])
+  .openapi({ description: "What heights are above: WGS 84 or the geoid." });
+
+const surfaceSchema = z
+  .strictObject({ kind: z.literal("surface"), body: z.literal("Earth"), ...place, heightOf })
+  .openapi("Surface", { description: "A clock at rest on the Earth." });
+
+const trackSchema = z
+  .strictObject({
+    kind: z.literal("track"),
+    body: z.literal("Earth"),
+    heightOf,
+    points: z
+      .array(z.strictObject({ at: instantSchema, ...place }))
+      .min(2)
+      .max(200_000),
+  })
+  .openapi("Track", {
+    description: "A clock carried over the Earth: great-circle legs between points, height even in time.",
+  });
+
+export const trajectorySchema = z
+  .discriminatedUnion("kind", [stateVectorSchema, stateTableSchema, surfaceSchema, trackSchema])
+  .openapi("Trajectory");
+
+export const earthOrientationSchema = z
+  .strictObject({
+    ut1MinusUtcS: number.min(-1).max(1).optional(),
+    xPoleArcsec: number.min(-2).max(2).optional(),
+    yPoleArcsec: number.min(-2).max(2).optional(),
+  })
+  .openapi("EarthOrientation", {
+    description: "How the Earth is turned; what is left out is zero, and the uncertainty says so.",
+  });
