@@ -46,7 +46,11 @@ export function spanInWords({ trajectory, leapSeconds }: Setting): string {
     const picoseconds = trajectory.reference.picoseconds + Math.round((t - whole) * 1e12);
     const carry = Math.floor(picoseconds / 1e12);
     const instant = { seconds: trajectory.reference.seconds + whole + carry, picoseconds: picoseconds - carry * 1e12 };
-    return isCovered(instant) ? formatInstant(instant, "UTC", leapSeconds) : instant.seconds < 0 ? "1972" : "2100";
+    return isCovered(instant, leapSeconds)
+      ? formatInstant(instant, "UTC", leapSeconds)
+      : instant.seconds < 0
+        ? "1972"
+        : "2100";
   };
   if (!Number.isFinite(trajectory.from) || !Number.isFinite(trajectory.to)) {
     return "1972-01-01T00:00:00Z to 2100-12-31T23:59:59Z";
@@ -64,8 +68,8 @@ export function outsideSpan(setting: Setting, name: string, received: unknown, w
 
 /** Whether an instant `elapsed` seconds after the anchor can be answered for. */
 export function isInside(setting: Setting, elapsed: number): boolean {
-  const { trajectory, clock } = setting;
+  const { trajectory, clock, leapSeconds } = setting;
   const t = anchorTime(setting) + elapsed;
   if (t < trajectory.from || t > trajectory.to) return false;
-  return isCovered({ seconds: clock.anchor.at.seconds + Math.floor(elapsed), picoseconds: 0 });
+  return isCovered({ seconds: clock.anchor.at.seconds + Math.floor(elapsed), picoseconds: 0 }, leapSeconds);
 }

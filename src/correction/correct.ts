@@ -59,7 +59,7 @@ function settle(setting: Setting, indicated: Duration): Duration {
 function whenInWords(setting: Setting, elapsed: Duration): string {
   const { clock, leapSeconds } = setting;
   const at = addDuration(clock.anchor.at, elapsed);
-  if (isCovered(at)) return `at ${formatInstant(at, "UTC", leapSeconds)}`;
+  if (isCovered(at, leapSeconds)) return `at ${formatInstant(at, "UTC", leapSeconds)}`;
   const seconds = toSeconds(elapsed);
   return `${Math.abs(seconds).toPrecision(6)} s ${seconds < 0 ? "before" : "after"} the anchor`;
 }

@@ -62,8 +62,8 @@ function orbitSigma({ trajectory }: Setting, elapsed: number): number | null {
 
 /**
  * What an unknown UT1 does: the equatorial ellipticity acts with a wrong phase. Its effect on time is 8 ps periodic and
- * 60 ps a day at most in low orbits (measured); twice the angle of it is in doubt.
+ * 600 ps a day at most (measured: a propagated state without C22 and S22); twice the angle of it is in doubt.
  */
 function earthOrientationSigma(elapsed: number): number {
-  return 2 * unknownRotation * (8e-12 + 60e-12 * (Math.abs(elapsed) / DAY));
+  return 2 * unknownRotation * (8e-12 + 600e-12 * (Math.abs(elapsed) / DAY));
 }

@@ -72,11 +72,7 @@ export function parseInstant(text: string, scale: Scale, leapSeconds: LeapSecond
     }
     day = dayNumber(year, month, Number(dayText));
   }
-  if (day < firstDay || day >= afterLastDay) {
-    throw new Problem("instant-out-of-range", `"${text}" lies outside 1972-01-01 to 2100-12-31.`, [
-      { place: [], received: text, expected: "an instant from 1972-01-01 to 2100-12-31" },
-    ]);
-  }
+  if (scale === "UTC" && day < firstDay) throw outOfRange(text);
   const hour = Number(hourText);
   const minute = Number(minuteText);
   const second = Number(secondText);
@@ -89,7 +85,8 @@ export function parseInstant(text: string, scale: Scale, leapSeconds: LeapSecond
     const offset = fixedOffsets[scale];
     const ps = picoseconds - offset.picoseconds;
     const borrow = ps < 0 ? 1 : 0;
-    return { seconds: day * 86_400 + secondOfDay - offset.seconds - borrow, picoseconds: ps + borrow * 1e12 };
+    const seconds = day * 86_400 + secondOfDay - offset.seconds - borrow;
+    return requireCovered({ seconds, picoseconds: ps + borrow * 1e12 }, text, leapSeconds);
   }
   const length = leapSeconds.secondsInDay(day);
   if (second > 59 && !(second === 60 && hour === 23 && minute === 59 && length === 86_401)) {
@@ -97,7 +94,19 @@ export function parseInstant(text: string, scale: Scale, leapSeconds: LeapSecond
   }
   if (secondOfDay >= length)
     throw unreadable(text, "a second that existed: this day ended with a negative leap second");
-  return { seconds: day * 86_400 + secondOfDay + leapSeconds.offsetOnDay(day), picoseconds };
+  const seconds = day * 86_400 + secondOfDay + leapSeconds.offsetOnDay(day);
+  return requireCovered({ seconds, picoseconds }, text, leapSeconds);
+}
+
+function requireCovered(instant: Instant, text: string, leapSeconds: LeapSecondTable): Instant {
+  if (!isCovered(instant, leapSeconds)) throw outOfRange(text);
+  return instant;
+}
+
+function outOfRange(text: string): Problem {
+  return new Problem("instant-out-of-range", `"${text}" lies outside 1972-01-01 to 2100-12-31 (UTC).`, [
+    { place: [], received: text, expected: "an instant from 1972-01-01 to 2100-12-31 (UTC)" },
+  ]);
 }
 
 const two = (n: number): string => (n < 10 ? `0${n}` : `${n}`);
@@ -132,9 +141,11 @@ export function formatInstant(instant: Instant, scale: Scale, leapSeconds: LeapS
 export const isInLeapSecond = (instant: Instant, leapSeconds: LeapSecondTable): boolean =>
   leapSeconds.utcLabel(instant.seconds).second === 86_400;
 
-/** The covered span: 1972-01-01T00:00:00 UTC to the end of 2100 (in TAI). */
-export const isCovered = (instant: Instant): boolean =>
-  instant.seconds >= firstDay * 86_400 && instant.seconds < afterLastDay * 86_400 + 100;
+/** Whether a moment lies in the years that are covered: 1972-01-01T00:00:00 UTC to the end of 2100. */
+export function isCovered(instant: Instant, leapSeconds: LeapSecondTable): boolean {
+  const { day } = leapSeconds.utcLabel(instant.seconds);
+  return day >= firstDay && day < afterLastDay;
+}
 
 /** TT - 2000-01-01T12:00:00 TT (J2000.0) in seconds, as a double: the argument of the slow astronomical functions. */
 export function ttSecondsSinceJ2000(instant: Instant): number {

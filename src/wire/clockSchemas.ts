@@ -9,7 +9,7 @@ export const counterSchema = z
         z
           .string()
           .max(120)
-          .regex(/^\d+\/\d+$/),
+          .regex(/^\d+\/\d+$/, 'a fraction of whole numbers such as "10230000/3"'),
       ])
       .openapi({
         description: 'Nominal rate: a number, taken as its shortest decimal exactly, or "num/den".',

@@ -25,7 +25,7 @@ export const counterValueSchema = z
     z
       .string()
       .max(120)
-      .regex(/^-?\d+$/),
+      .regex(/^-?\d+$/, "decimal digits, with - in front when negative"),
   ])
   .openapi("CounterValue", {
     description:

@@ -45,7 +45,7 @@ function expectation(issue: Issue, found: unknown): string {
     case "invalid_value":
       return `${issue.values.length === 1 ? "" : "one of "}${issue.values.map((v) => JSON.stringify(v)).join(", ")}${missing}`;
     case "invalid_format":
-      return issue.format === "regex" ? `text of the form ${issue.pattern}` : `text of the form ${issue.format}`;
+      return issue.message; // every pattern of the schemas brings its own words
     case "invalid_union":
       return unionExpectation(issue, found, missing);
     default:

@@ -1,0 +1,66 @@
+import { durationFromNanoseconds, sumDurations, toNanoseconds } from "../../src/time/index.ts";
+import { lift } from "./bench.ts";
+import type { Row } from "./row.ts";
+
+const paper = "Hafele & Keating 1972, Science 177, 166/168";
+
+/** What a clock gains at a height (m) in so many hours beside one at sea level, ns. */
+const gained = (height: number, hours: number): number => lift(9.8, 0, height) * hours * 3600 * 1e9;
+
+/** Sum of terms as an answer sums them, ns. */
+const net = (...parts: number[]): number => toNanoseconds(sumDurations(parts.map(durationFromNanoseconds)));
+
+/** The flights around the world of 1971. */
+export const hafeleKeating: readonly Row[] = [
+  {
+    id: "H01",
+    what: "gravitational part eastward from the flight's mean values",
+    inputs: { h_m: 8900, t_h: 41.2, g: 9.8 },
+    published: 144,
+    got: () => gained(8900, 41.2),
+    tolerance: 3,
+    unit: "ns",
+    source: `${paper} Table (gravitational 144+-14)`,
+    standing: "from memory",
+    place: "orbit: surfaces at two heights where g = 9.8; relativity: ProperTime.rates",
+    note: "Mean altitude and time are from memory.",
+  },
+  {
+    id: "H02",
+    what: "gravitational part westward from the flight's mean values",
+    inputs: { h_m: 9360, t_h: 48.6, g: 9.8 },
+    published: 179,
+    got: () => gained(9360, 48.6),
+    tolerance: 3,
+    unit: "ns",
+    source: `${paper} Table (179+-18)`,
+    standing: "from memory",
+    place: "orbit: surfaces at two heights where g = 9.8; relativity: ProperTime.rates",
+  },
+  {
+    id: "H05",
+    what: "net prediction eastward, sum of the table's parts",
+    inputs: { parts: [144, -184] },
+    published: -40,
+    got: () => net(144, -184),
+    tolerance: 0.5,
+    unit: "ns",
+    source: paper,
+    standing: "derived",
+    place: "time: sumDurations, as for the terms of an answer",
+    note: "A check of the printed table; no flight is computed.",
+  },
+  {
+    id: "H06",
+    what: "net prediction westward, sum of the table's parts",
+    inputs: { parts: [179, 96] },
+    published: 275,
+    got: () => net(179, 96),
+    tolerance: 0.5,
+    unit: "ns",
+    source: paper,
+    standing: "derived",
+    place: "time: sumDurations, as for the terms of an answer",
+    note: "A check of the printed table; no flight is computed.",
+  },
+];
