@@ -18,12 +18,12 @@ function terrestrialTime(ttSeconds: number): AstroTime {
  * TT seconds since J2000.0. Geometric: no light time, no aberration.
  * Accuracy: Sun 1000 km, Moon 20 km, which is 1e-5 of their tides on a clock.
  */
-export const sunTable = new TabulatedFunction(3, 16 * DAY, 20, (t) => {
+export const sunTable = new TabulatedFunction(3, 16 * DAY, 13, (t) => {
   const earth = HelioVector(Body.Earth, terrestrialTime(t));
   return [-earth.x * au, -earth.y * au, -earth.z * au];
 });
 
-export const moonTable = new TabulatedFunction(3, 2 * DAY, 14, (t) => {
+export const moonTable = new TabulatedFunction(3, 4 * DAY, 15, (t) => {
   const moon = GeoMoon(terrestrialTime(t));
   return [moon.x * au, moon.y * au, moon.z * au];
 });

@@ -25,10 +25,10 @@ export interface Breakdown {
  * `asRead`: with the latch term, which belongs to a reading and not to the clock.
  */
 export function clockMinusTt(setting: Setting, elapsed: Duration, asRead: boolean, withRates: boolean): Breakdown {
-  const { clock, trajectory, properTime: integral } = setting;
+  const { clock, window, properTime: integral } = setting;
   const start = anchorTime(setting);
   const wanted = start + toSeconds(elapsed);
-  const t = Math.min(trajectory.to, Math.max(trajectory.from, wanted));
+  const t = Math.min(window.to, Math.max(window.from, wanted));
   const beyond = wanted - t;
   const values = integral.between(start, t);
   const rates = withRates || beyond !== 0 ? integral.rates(t) : values.map(() => 0);

@@ -5,11 +5,10 @@ import {
   type Duration,
   formatInstant,
   type Instant,
-  isCovered,
   isInLeapSecond,
   toSeconds,
 } from "../time/index.ts";
-import { anchorTime, clockMinusTt } from "./clockMinusTt.ts";
+import { clockMinusTt } from "./clockMinusTt.ts";
 import type { ClockState, Flag, Setting } from "./model.ts";
 import { combine, uncertaintyItems } from "./uncertainty.ts";
 
@@ -39,37 +38,15 @@ function commonFlags({ trajectory, leapSeconds, clock }: Setting, at: Instant): 
   return out;
 }
 
-/** The span of a setting in words, UTC. */
-export function spanInWords({ trajectory, leapSeconds }: Setting): string {
-  const text = (t: number): string => {
-    const whole = Math.floor(t);
-    const picoseconds = trajectory.reference.picoseconds + Math.round((t - whole) * 1e12);
-    const carry = Math.floor(picoseconds / 1e12);
-    const instant = { seconds: trajectory.reference.seconds + whole + carry, picoseconds: picoseconds - carry * 1e12 };
-    return isCovered(instant, leapSeconds)
-      ? formatInstant(instant, "UTC", leapSeconds)
-      : instant.seconds < 0
-        ? "1972"
-        : "2100";
-  };
-  if (!Number.isFinite(trajectory.from) || !Number.isFinite(trajectory.to)) {
-    return "1972-01-01T00:00:00Z to 2100-12-31T23:59:59Z";
-  }
-  return `${text(trajectory.from)} to ${text(trajectory.to)}`;
-}
-
 /** An instant that lies outside the span or the years that are covered. `name`: what it is, for the sentence. */
 export function outsideSpan(setting: Setting, name: string, received: unknown, when: string): Problem {
-  const span = spanInWords(setting);
-  return new Problem("outside-span", `${name} lies ${when}, outside the trajectory's span ${span}.`, [
-    { place: [], received, expected: `an instant from ${span}` },
+  const { window, leapSeconds } = setting;
+  const [first, last] = [window.first, window.last].map((end) => formatInstant(end, "UTC", leapSeconds));
+  return new Problem("outside-span", `${name} lies ${when}, outside the trajectory's span ${first} to ${last}.`, [
+    { place: [], received, expected: `an instant from ${first} to ${last}` },
   ]);
 }
 
-/** Whether an instant `elapsed` seconds after the anchor can be answered for. */
-export function isInside(setting: Setting, elapsed: number): boolean {
-  const { trajectory, clock, leapSeconds } = setting;
-  const t = anchorTime(setting) + elapsed;
-  if (t < trajectory.from || t > trajectory.to) return false;
-  return isCovered({ seconds: clock.anchor.at.seconds + Math.floor(elapsed), picoseconds: 0 }, leapSeconds);
-}
+/** Whether an instant can be answered for. */
+export const isInside = ({ window }: Setting, at: Instant): boolean =>
+  compareInstants(at, window.first) >= 0 && compareInstants(at, window.last) <= 0;

@@ -1,5 +1,5 @@
-import { counterModulus, durationToTicks, ticksToDuration } from "../clock/index.ts";
-import { invariant, Problem } from "../problem/index.ts";
+import { counterModulus, durationToTicks, oscillatorTerms, ticksToDuration } from "../clock/index.ts";
+import { Problem } from "../problem/index.ts";
 import {
   addDuration,
   addDurations,
@@ -7,8 +7,11 @@ import {
   durationBetween,
   formatInstant,
   isCovered,
+  secondsBetween,
   subtractDurations,
+  sumDurations,
   toSeconds,
+  toTwoPartSeconds,
   zeroDuration,
 } from "../time/index.ts";
 import { clockMinusTt } from "./clockMinusTt.ts";
@@ -25,34 +28,60 @@ const mostIterations = 12;
  */
 export function correctReading(setting: Setting, reading: Reading, unwrap: Unwrap | null): CorrectedReading {
   const flags: Flag[] = [];
+  const { clock } = setting;
   const ticks = elapsedTicks(setting, reading, unwrap, flags);
-  const elapsed = settle(setting, ticksToDuration(ticks, setting.clock.counter.ticksPerSecond));
-  if (!isInside(setting, toSeconds(elapsed))) {
-    throw outsideSpan(setting, "The reading", String(reading.reading), whenInWords(setting, elapsed)).within("reading");
-  }
+  const indicated = ticksToDuration(ticks, clock.counter.ticksPerSecond);
+  const outside = (elapsed: Duration) =>
+    outsideSpan(setting, "The reading", String(reading.reading), whenInWords(setting, elapsed)).within("reading");
+  // A reading that is far outside by the oscillator alone is refused before anything is propagated for it.
+  const rough = withoutRelativity(setting, indicated);
+  if (!isNear(setting, rough)) throw outside(rough);
+  const elapsed = settle(setting, indicated);
+  if (!isInside(setting, addDuration(clock.anchor.at, elapsed))) throw outside(elapsed);
   return clockStateAt(setting, elapsed, true, flags);
+}
+
+/** Whether an instant that is known without relativity can lie inside: relativity moves it by less than 1e-8 of itself. */
+function isNear(setting: Setting, elapsed: Duration): boolean {
+  const margin = 1 + 1e-8 * Math.abs(elapsed.seconds);
+  const at = addDuration(setting.clock.anchor.at, elapsed);
+  const { first, last } = setting.window;
+  return secondsBetween(last, at) < margin && secondsBetween(at, first) < margin;
 }
 
 /** TT since the anchor at which the clock indicates `indicated` since the anchor. */
 function settle(setting: Setting, indicated: Duration): Duration {
+  return fixedPoint(indicated, (elapsed) => clockMinusTt(setting, elapsed, true, false).total);
+}
+
+/** The same by the oscillator alone, without relativity; it costs no propagation. */
+function withoutRelativity(setting: Setting, indicated: Duration): Duration {
+  if (Math.abs(indicated.seconds) > 1e11) return indicated;
+  return fixedPoint(indicated, (elapsed) =>
+    sumDurations(
+      oscillatorTerms(setting.clock.oscillator, toTwoPartSeconds(elapsed), 1).map((term) => term.accumulated),
+    ),
+  );
+}
+
+/** Solves elapsed + off(elapsed) = indicated, to the femtosecond. Errors: impossible-clock when it does not settle. */
+function fixedPoint(indicated: Duration, off: (elapsed: Duration) => Duration): Duration {
   let elapsed = indicated;
-  // Far outside the span nothing but the oscillator moves it, and no convergence is owed to a reading that is refused.
-  let before = zeroDuration;
+  let moved = zeroDuration;
   for (let i = 0; i < mostIterations; i++) {
-    if (Math.abs(elapsed.seconds) > 1e11) return elapsed;
-    const { total } = clockMinusTt(setting, elapsed, true, false);
-    const next = subtractDurations(indicated, total);
-    const moved = subtractDurations(next, elapsed);
+    const next = subtractDurations(indicated, off(elapsed));
+    moved = subtractDurations(next, elapsed);
     elapsed = next;
     if (moved.seconds === 0 && moved.femtoseconds === 0) return elapsed;
     // Two neighbours a femtosecond apart may alternate; either is right.
     if (i > 2 && Math.abs(toSeconds(moved)) < 1.5e-15) return elapsed;
-    before = moved;
+    if (Math.abs(elapsed.seconds) > 1e11) return elapsed; // outside all that is covered; the caller refuses it
   }
+  const left = Math.abs(toSeconds(moved)).toExponential(1);
   throw new Problem(
     "impossible-clock",
-    `The clock's offset changes too fast to be inverted (still moving by ${toSeconds(before).toExponential(1)} s after ${mostIterations} steps).`,
-    [{ place: ["reading"], expected: "an oscillator within some percent of its nominal rate" }],
+    `The oscillator moves too far from its nominal rate at this reading to be inverted (${left} s left after ${mostIterations} steps).`,
+    [{ place: ["reading"], expected: "a reading at which ageing has moved the rate by less than some percent" }],
   );
 }
 
@@ -95,7 +124,7 @@ function turnsNear(
 ): bigint {
   const { clock } = setting;
   const elapsed = durationBetween(clock.anchor.at, near);
-  if (!isInside(setting, toSeconds(elapsed))) {
+  if (!isInside(setting, near)) {
     throw outsideSpan(
       setting,
       "The rough time",
@@ -154,17 +183,7 @@ function candidates(setting: Setting, difference: bigint, modulus: bigint): { tu
     const indicated = ticksToDuration(difference + turns * modulus, rate);
     if (Math.abs(indicated.seconds) > 1e11) continue;
     const elapsed = withoutRelativity(setting, indicated);
-    if (isInside(setting, toSeconds(elapsed))) out.push({ turns, elapsed });
+    if (isInside(setting, addDuration(setting.clock.anchor.at, elapsed))) out.push({ turns, elapsed });
   }
   return out;
-}
-
-/** TT since the anchor for an indicated span by the oscillator alone; good to 1e-9 of the span. */
-function withoutRelativity(setting: Setting, indicated: Duration): Duration {
-  const oscillator = setting.clock.oscillator;
-  if (oscillator === null) return indicated;
-  const target = toSeconds(indicated) - (oscillator.offset === null ? 0 : toSeconds(oscillator.offset));
-  const rate = (1 + (oscillator.preset ?? 0)) * (1 + (oscillator.frequency ?? 0));
-  invariant(rate > 0, "an oscillator's rate is positive");
-  return addDurations(indicated, { seconds: Math.round(target / rate - toSeconds(indicated)), femtoseconds: 0 });
 }

@@ -28,6 +28,8 @@ export interface Setting {
   readonly trajectory: Trajectory;
   readonly properTime: ProperTime;
   readonly leapSeconds: LeapSecondTable;
+  /** The trajectory's span inside the covered years: exact, and in TT seconds since the trajectory's reference. */
+  readonly window: { readonly first: Instant; readonly last: Instant; readonly from: number; readonly to: number };
   /** UT1 - UTC and the pole were given. */
   readonly earthOrientationGiven: boolean;
 }

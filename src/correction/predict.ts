@@ -1,5 +1,5 @@
 import { counterModulus, durationToTicks, tickSeconds, wrap } from "../clock/index.ts";
-import { addDurations, durationBetween, formatInstant, type Instant, toSeconds } from "../time/index.ts";
+import { addDurations, durationBetween, formatInstant, type Instant } from "../time/index.ts";
 import { clockStateAt, isInside, outsideSpan } from "./clockState.ts";
 import type { Flag, PredictedReading, Setting } from "./model.ts";
 
@@ -10,11 +10,11 @@ import type { Flag, PredictedReading, Setting } from "./model.ts";
  */
 export function predictReading(setting: Setting, instant: Instant): PredictedReading {
   const { clock } = setting;
-  const elapsed = durationBetween(clock.anchor.at, instant);
-  if (!isInside(setting, toSeconds(elapsed))) {
+  if (!isInside(setting, instant)) {
     const text = formatInstant(instant, "UTC", setting.leapSeconds);
     throw outsideSpan(setting, "The instant", text, `at ${text}`);
   }
+  const elapsed = durationBetween(clock.anchor.at, instant);
   const flags: Flag[] = [];
   const state = clockStateAt(setting, elapsed, false, []);
   const { ticks, fraction } = durationToTicks(addDurations(elapsed, state.clockMinusTt), clock.counter);

@@ -3,8 +3,16 @@ import { counterModulus } from "../clock/index.ts";
 import { buildTrajectory, type TrajectoryDescription } from "../orbit/index.ts";
 import { at, type Notice } from "../problem/index.ts";
 import { type PhysicalTermName, ProperTime, physicalTermNames, rateTerms } from "../relativity/index.ts";
-import { formatInstant, type Instant, type LeapSecondTable } from "../time/index.ts";
-import { outsideSpan } from "./clockState.ts";
+import {
+  coveredYears,
+  earlier,
+  formatInstant,
+  type Instant,
+  type LeapSecondTable,
+  later,
+  secondsBetween,
+} from "../time/index.ts";
+import { isInside, outsideSpan } from "./clockState.ts";
 import { beyondWidth } from "./correct.ts";
 import type { Clock, Setting } from "./model.ts";
 
@@ -54,16 +62,20 @@ export function makeSetting(
     throw beyondWidth(reading, widthBits).within("clock", "anchor", "reading");
   }
   const { trajectory } = properTime;
+  const years = coveredYears(leapSeconds);
+  const first = trajectory.first === null ? years.first : later(years.first, trajectory.first);
+  const last = trajectory.last === null ? years.last : earlier(years.last, trajectory.last);
+  const from = Math.max(trajectory.from, secondsBetween(trajectory.reference, first));
+  const to = Math.min(trajectory.to, secondsBetween(trajectory.reference, last));
   const setting: Setting = {
     clock,
     trajectory,
     properTime,
     leapSeconds,
+    window: { first, last, from, to },
     earthOrientationGiven: orientation.ut1MinusUtc !== null,
   };
-  const start = clock.anchor.at.seconds - trajectory.reference.seconds;
-  const exact = start + (clock.anchor.at.picoseconds - trajectory.reference.picoseconds) / 1e12;
-  if (exact < trajectory.from || exact > trajectory.to) {
+  if (!isInside(setting, clock.anchor.at)) {
     const text = formatInstant(clock.anchor.at, "UTC", leapSeconds);
     throw outsideSpan(setting, "The anchor", text, `at ${text}`).within("clock", "anchor", "at");
   }

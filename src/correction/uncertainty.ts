@@ -14,7 +14,7 @@ const unknownRotation = (0.9 / Math.sqrt(3)) * EARTH_ROTATION;
 export function uncertaintyItems(setting: Setting, elapsed: number, asRead: boolean): UncertaintyItem[] {
   const { clock, trajectory } = setting;
   const start = anchorTime(setting);
-  const end = Math.min(trajectory.to, Math.max(trajectory.from, start + elapsed));
+  const end = Math.min(setting.window.to, Math.max(setting.window.from, start + elapsed));
   const out: UncertaintyItem[] = [];
   const item = (source: string, sigma: number, shared: UncertaintyItem["shared"]) =>
     out.push({ source, type: "B", sigma, shared });

@@ -84,5 +84,5 @@ export function slopeAtKnot(
     const difference = values[stride * i + k]! - values[stride * at + k]!;
     sum += ((weight(i) / own) * difference) / (times[at]! - times[i]!);
   }
-  return -sum;
+  return sum;
 }

@@ -230,7 +230,10 @@ function buildTable(description: Of<"state-table">, orientation: EarthOrientatio
   if (implausible !== null) notices.push(implausible);
   if (fast) notices.push(weakFieldLimit);
   notices.push(orbitErrorNotGiven);
-  return new TableTrajectory(reference, times, values, axes, { notices, implausible: implausible !== null });
+  return new TableTrajectory(reference, states.at(-1)!.epoch, times, values, axes, {
+    notices,
+    implausible: implausible !== null,
+  });
 }
 
 function impossibleTable(place: (string | number)[], detail: string, expected: string): Problem {
@@ -264,7 +267,7 @@ function buildTrack(description: Of<"track">, orientation: EarthOrientation): Tr
     legs.push(leg(normal(points[i]!), normal(points[i + 1]!), above[i]!, above[i + 1]!, start, duration, i + 1));
   }
   const highest = Math.max(...points.map((p) => Math.abs(p.height)));
-  return new TrackTrajectory(reference, legs, heightDoubt(heightOf, highest), axes);
+  return new TrackTrajectory(reference, points.at(-1)!.at, legs, heightDoubt(heightOf, highest), axes);
 }
 
 const normal = ({ latitude, longitude }: GeodeticPoint): Vec3 => [

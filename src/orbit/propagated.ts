@@ -30,6 +30,8 @@ export class PropagatedTrajectory implements Trajectory {
   readonly reference: Instant;
   readonly from = -propagationReach;
   readonly to = propagationReach;
+  readonly first: Instant;
+  readonly last: Instant;
   readonly axes: EarthAxes;
   readonly notices: readonly Notice[];
   readonly implausible: boolean;
@@ -50,6 +52,8 @@ export class PropagatedTrajectory implements Trajectory {
     given: { orbitError: OrbitError | null; notices: readonly Notice[]; implausible: boolean },
   ) {
     this.reference = epoch;
+    this.first = addSeconds(epoch, -propagationReach);
+    this.last = addSeconds(epoch, propagationReach);
     this.axes = axes;
     this.notices = given.notices;
     this.implausible = given.implausible;

@@ -37,6 +37,8 @@ export class SurfaceTrajectory implements Trajectory {
   readonly reference: Instant;
   readonly from = Number.NEGATIVE_INFINITY;
   readonly to = Number.POSITIVE_INFINITY;
+  readonly first = null;
+  readonly last = null;
   readonly axes: EarthAxes;
   readonly notices = [];
   readonly implausible = false;
@@ -80,6 +82,8 @@ export class TrackTrajectory implements Trajectory {
   readonly reference: Instant;
   readonly from = 0;
   readonly to: number;
+  readonly first: Instant;
+  readonly last: Instant;
   readonly axes: EarthAxes;
   readonly notices = [];
   readonly implausible = false;
@@ -89,12 +93,15 @@ export class TrackTrajectory implements Trajectory {
   readonly modelError: ModelError;
   readonly #legs: readonly TrackLeg[];
 
-  constructor(reference: Instant, legs: readonly TrackLeg[], heightDoubt: number, axes: EarthAxes) {
-    this.reference = reference;
+  /** `first` and `last`: instants of the end points; legs in TT seconds since `first`. */
+  constructor(first: Instant, last: Instant, legs: readonly TrackLeg[], heightDoubt: number, axes: EarthAxes) {
+    this.reference = first;
+    this.first = first;
+    this.last = last;
     this.axes = axes;
     this.#legs = legs;
-    const last = legs.at(-1)!;
-    this.to = last.start + last.duration;
+    const end = legs.at(-1)!;
+    this.to = end.start + end.duration;
     this.modelError = heightTruncation(heightDoubt);
   }
 

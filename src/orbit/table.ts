@@ -18,6 +18,8 @@ export class TableTrajectory implements Trajectory {
   readonly reference: Instant;
   readonly from = 0;
   readonly to: number;
+  readonly first: Instant;
+  readonly last: Instant;
   readonly axes: EarthAxes;
   readonly notices: readonly Notice[];
   readonly implausible: boolean;
@@ -30,15 +32,18 @@ export class TableTrajectory implements Trajectory {
   /** Signed error estimate of the accumulated time from the first knot to each, s. */
   readonly #error: Float64Array;
 
-  /** `times` in TT seconds since `reference`, rising from 0; `states` six numbers a knot, GCRF, m and m/s. */
+  /** `first` and `last`: instants of the end knots. `times` in TT seconds since `first`, rising from 0; `states` six numbers a knot, GCRF, m and m/s. */
   constructor(
-    reference: Instant,
+    first: Instant,
+    last: Instant,
     times: Float64Array,
     states: Float64Array,
     axes: EarthAxes,
     given: { notices: readonly Notice[]; implausible: boolean },
   ) {
-    this.reference = reference;
+    this.reference = first;
+    this.first = first;
+    this.last = last;
     this.#times = times;
     this.#states = states;
     this.axes = axes;

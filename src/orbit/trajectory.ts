@@ -35,6 +35,9 @@ export interface Trajectory {
   /** First and last usable time; infinite when unlimited. */
   readonly from: number;
   readonly to: number;
+  /** The same as exact instants; null when unlimited. */
+  readonly first: Instant | null;
+  readonly last: Instant | null;
   readonly axes: EarthAxes;
   /** Remarks on the trajectory as given. */
   readonly notices: readonly Notice[];

@@ -30,22 +30,32 @@ export class EnvironmentReader {
     moon: new Float64Array(3),
   };
   readonly #trajectory: Trajectory;
-  readonly #needs: ReadonlySet<Need>;
+  readonly #needsField: boolean;
+  readonly #needsSun: boolean;
+  readonly #needsMoon: boolean;
   readonly #ttAtReference: number;
 
   constructor(trajectory: Trajectory, needs: ReadonlySet<Need>) {
     this.#trajectory = trajectory;
-    this.#needs = needs;
+    this.#needsField = needs.has("field");
+    this.#needsSun = needs.has("sun");
+    this.#needsMoon = needs.has("moon");
     this.#ttAtReference = ttSecondsSinceJ2000(trajectory.reference);
   }
 
   read(t: number): Environment {
     const env = this.environment;
     this.#trajectory.state(t, env.state);
-    const [x, y, z, vx, vy, vz] = env.state as unknown as [number, number, number, number, number, number];
+    const s = env.state;
+    const x = s[0]!;
+    const y = s[1]!;
+    const z = s[2]!;
+    const vx = s[3]!;
+    const vy = s[4]!;
+    const vz = s[5]!;
     env.distance = Math.sqrt(x * x + y * y + z * z);
     env.speedSquared = vx * vx + vy * vy + vz * vz;
-    if (this.#needs.has("field")) {
+    if (this.#needsField) {
       const m = this.#trajectory.axes.rotation(t);
       sampleField(
         m[0] * x + m[1] * y + m[2] * z,
@@ -54,8 +64,8 @@ export class EnvironmentReader {
         env.field,
       );
     }
-    if (this.#needs.has("sun")) sunTable.evaluate(this.#ttAtReference + t, env.sun);
-    if (this.#needs.has("moon")) moonTable.evaluate(this.#ttAtReference + t, env.moon);
+    if (this.#needsSun) sunTable.evaluate(this.#ttAtReference + t, env.sun);
+    if (this.#needsMoon) moonTable.evaluate(this.#ttAtReference + t, env.moon);
     return env;
   }
 }

@@ -139,6 +139,7 @@ export class ProperTime {
   /** One segment, or the place where it must be cut. */
   #segment(a: number, b: number, cut: number | null): Segment | number {
     const halfLength = (b - a) / 2;
+    const count = this.#integrated.length;
     for (let p = 0; p < points; p++) {
       // At the very ends of a stretch the points stay inside it.
       const environment = this.#reader.read(a + halfLength * (1 + basis.points[p]!));
@@ -148,14 +149,14 @@ export class ProperTime {
         ]);
       }
       if (environment.speedSquared > this.#fastest) this.#fastest = environment.speedSquared;
-      for (const [k, { term }] of this.#integrated.entries()) this.#samples[k]![p] = term.rate(environment);
+      for (let k = 0; k < count; k++) this.#samples[k]![p] = this.#integrated[k]!.term.rate(environment);
     }
     const series = new Float64Array(this.#integrated.length * width);
     const gain = new Float64Array(this.#integrated.length);
     for (let k = 0; k < gain.length; k++) {
       const c = basis.coefficients(this.#samples[k]!);
       if (cut !== null && (Math.abs(c[degree - 1]!) + Math.abs(c[degree]!)) * halfLength > tolerance) return cut;
-      for (let j = 0; j < points; j++) c[j]! *= halfLength;
+      for (let j = 0; j < points; j++) c[j] = c[j]! * halfLength;
       const integral = antiderivative(c);
       series.set(integral, k * width);
       gain[k] = evaluateSeries(integral, 1);

@@ -9,10 +9,12 @@ import type { RateTerm } from "./rateTerm.ts";
  * Source: IERS Conventions (2010) eq. 10.6; IAU 2000 Resolution B1.3.
  */
 function tidalRate(gm: number, body: Float64Array, environment: Environment): number {
-  const [x, y, z] = environment.state as unknown as [number, number, number];
-  const [bx, by, bz] = body as unknown as [number, number, number];
+  const { state } = environment;
+  const bx = body[0]!;
+  const by = body[1]!;
+  const bz = body[2]!;
   const d2 = bx * bx + by * by + bz * bz;
-  const along = (x * bx + y * by + z * bz) / d2;
+  const along = (state[0]! * bx + state[1]! * by + state[2]! * bz) / d2;
   const ratio2 = (environment.distance * environment.distance) / d2;
   const q = ratio2 - 2 * along;
   const root = Math.sqrt(1 + q);

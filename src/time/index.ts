@@ -26,6 +26,7 @@ export {
 } from "./instant.ts";
 export { defaultLeapSeconds, LeapSecondTable } from "./leapSeconds.ts";
 export {
+  coveredYears,
   formatInstant,
   isCovered,
   isInLeapSecond,

@@ -141,6 +141,15 @@ export function formatInstant(instant: Instant, scale: Scale, leapSeconds: LeapS
 export const isInLeapSecond = (instant: Instant, leapSeconds: LeapSecondTable): boolean =>
   leapSeconds.utcLabel(instant.seconds).second === 86_400;
 
+/** The first and the last moment of the years that are covered. */
+export function coveredYears(leapSeconds: LeapSecondTable): { first: Instant; last: Instant } {
+  const midnight = (day: number) => day * 86_400 + leapSeconds.offsetOnDay(day);
+  return {
+    first: { seconds: midnight(firstDay), picoseconds: 0 },
+    last: { seconds: midnight(afterLastDay) - 1, picoseconds: 999_999_999_999 },
+  };
+}
+
 /** Whether a moment lies in the years that are covered: 1972-01-01T00:00:00 UTC to the end of 2100. */
 export function isCovered(instant: Instant, leapSeconds: LeapSecondTable): boolean {
   const { day } = leapSeconds.utcLabel(instant.seconds);

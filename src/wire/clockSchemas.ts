@@ -32,13 +32,13 @@ export const oscillatorSchema = z
   .strictObject({
     offsetNs: number.optional(),
     presetFractional: number
-      .gt(-0.5)
-      .lt(0.5)
+      .gt(-0.01)
+      .lt(0.01)
       .optional()
       .openapi({ description: "Deliberate fractional frequency offset given before launch." }),
     frequencyOffset: number
-      .gt(-0.5)
-      .lt(0.5)
+      .gt(-0.01)
+      .lt(0.01)
       .optional()
       .openapi({ description: "What is left of the fractional frequency." }),
     agingPerDay: number

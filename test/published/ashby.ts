@@ -53,7 +53,7 @@ function lunarTide(radius: number, distance: number): number {
 export const ashby: readonly Row[] = [
   {
     id: "K08",
-    what: "geoid potential, monopole part GM/(a1 c^2)",
+    what: "geoid potential, part GM/(a1 c^2)",
     inputs: { GM: 3.986004418e14, a1: equator },
     published: 6.95348e-10,
     got: monopole,
@@ -66,7 +66,7 @@ export const ashby: readonly Row[] = [
   },
   {
     id: "K09",
-    what: "geoid potential, quadrupole part GM J2/(2 a1 c^2)",
+    what: "geoid potential, part GM J2/(2 a1 c^2)",
     inputs: { J2: 0.00108263 },
     published: 3.76e-13,
     got: quadrupole,
@@ -79,7 +79,7 @@ export const ashby: readonly Row[] = [
   },
   {
     id: "K10",
-    what: "geoid potential, rotation part omega^2 a1^2/(2 c^2)",
+    what: "geoid potential, part omega^2 a1^2/(2 c^2)",
     inputs: { omega: 7.2921151467e-5 },
     published: 1.203e-12,
     got: rotation,
@@ -104,7 +104,7 @@ export const ashby: readonly Row[] = [
   },
   {
     id: "G12",
-    what: "eccentricity effect, amplitude at e = 0.01",
+    what: "eccentricity amplitude, e = 0.01",
     inputs: { a_m: 26_561_400, e: 0.01 },
     published: 22.9,
     got: () => Math.abs(broadcastEccentricityTerm(GM_EARTH, 26_561_400, 0.01, Math.PI / 2)) * 1e9,
@@ -116,7 +116,7 @@ export const ashby: readonly Row[] = [
   },
   {
     id: "G13",
-    what: "eccentricity effect, amplitude at e = 0.02, integrated along the orbit",
+    what: "eccentricity amplitude, e = 0.02, integrated",
     inputs: { a_m: 26_561_400, e: 0.02 },
     published: 45.8,
     got: () => integratedAmplitude(26_561_400, 0.02),
@@ -128,7 +128,7 @@ export const ashby: readonly Row[] = [
   },
   {
     id: "G25",
-    what: "offset of NTS-2 measured in 1977, against the predicted one",
+    what: "rate of NTS-2 as measured in 1977",
     inputs: { a_m: 26_561_750 },
     published: 442.5,
     got: () => twoBodyMeanRate(26_561_750) * 1e12,
@@ -137,7 +137,7 @@ export const ashby: readonly Row[] = [
     source: "Ashby; NRL NTS-2 experiment",
     standing: "read",
     place: "relativity: twoBodyMeanRate",
-    note: "A measurement; the difference of 0.9 % is the clock's, not the theory's.",
+    note: "A measurement against the computed rate; the difference of 0.9 % is the clock's, not the theory's.",
   },
   {
     id: "G32",
@@ -153,7 +153,7 @@ export const ashby: readonly Row[] = [
   },
   {
     id: "G33",
-    what: "size of the Moon's tidal potential at the GPS radius over c^2",
+    what: "Moon's tidal term at the GPS radius, size",
     inputs: { r: 26_561_400, D: 384_400_000 },
     published: 7e-16,
     got: () => lunarTide(26_561_400, 384_400_000),

@@ -1,7 +1,7 @@
 import { durationToTicks, oscillatorTerms, rational } from "../../src/clock/index.ts";
 import { buildTrajectory, type KeplerianElements, type Trajectory, twoBodyState } from "../../src/orbit/index.ts";
 import { type PhysicalTermName, ProperTime, type RateTerm, rateTerms } from "../../src/relativity/index.ts";
-import { addDurations, addSeconds, defaultLeapSeconds, parseInstant, type Duration } from "../../src/time/index.ts";
+import { addDurations, addSeconds, type Duration, defaultLeapSeconds, parseInstant } from "../../src/time/index.ts";
 import { C2 } from "../../src/units/index.ts";
 
 /** What several of the rows need to put the project's code to work. */

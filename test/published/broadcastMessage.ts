@@ -25,9 +25,9 @@ export interface BroadcastMessage {
 /** 1980-01-06T00:00:00 UTC, where GPS time begins: 19 s behind TAI. */
 const gpsBegin: Instant = { seconds: 315_964_800 + 19, picoseconds: 0 };
 
-export const toeOf = ({ week, second }: BroadcastMessage): Instant => addSeconds(gpsBegin, week * 604_800 + second);
+const toeOf = ({ week, second }: BroadcastMessage): Instant => addSeconds(gpsBegin, week * 604_800 + second);
 
-/** Seconds from toe; the message may be used while the size of it is at most half the fit's span. */
+/** Seconds since toe. The fit holds for half of its span to both sides. */
 export const ageAt = (message: BroadcastMessage, at: Instant): number => secondsBetween(toeOf(message), at);
 
 /** F e sqrt(A) sin E of a message, s. Source: IS-GPS-200 20.3.3.3.3.1 with the mean anomaly of table 20-IV. */

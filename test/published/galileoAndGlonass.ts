@@ -7,7 +7,7 @@ import type { Row } from "./row.ts";
 export const galileoAndGlonass: readonly Row[] = [
   {
     id: "G02",
-    what: "F = -2 sqrt(mu)/c^2 with the mu of Galileo",
+    what: "F with the mu of Galileo",
     inputs: { mu: 3.986004418e14 },
     published: -4.442807309e-10,
     got: () => broadcastEccentricityTerm(GM_EARTH, 1, 1, Math.PI / 2),

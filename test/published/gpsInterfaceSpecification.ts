@@ -34,7 +34,7 @@ function formsApart(semiMajorAxis: number, eccentricity: number): number {
 export const gpsInterfaceSpecification: readonly Row[] = [
   {
     id: "G01",
-    what: "F = -2 sqrt(mu)/c^2 with the mu of GPS",
+    what: "F with the mu of GPS",
     inputs: { mu: gpsGm },
     published: -4.442807633e-10,
     got: () => broadcastEccentricityTerm(gpsGm, 1, 1, Math.PI / 2),
@@ -71,7 +71,7 @@ export const gpsInterfaceSpecification: readonly Row[] = [
   },
   {
     id: "G06",
-    what: "mean rate on the nominal orbit as fractional frequency",
+    what: "mean rate on the nominal orbit",
     inputs: { a_m: 26_561_400, e: 0 },
     published: 4.4647e-10,
     got: () => twoBodyMeanRate(26_561_400),
@@ -83,7 +83,7 @@ export const gpsInterfaceSpecification: readonly Row[] = [
   },
   {
     id: "G14",
-    what: "-2 r.v/c^2 less F e sqrt(a) sin E, greatest size over a revolution",
+    what: "-2 r.v/c^2 less F e sqrt(a) sin E, most",
     inputs: { a_m: 26_561_400, e: 0.013 },
     published: 0,
     got: () => formsApart(26_561_400, 0.013),

@@ -14,7 +14,7 @@ const net = (...parts: number[]): number => toNanoseconds(sumDurations(parts.map
 export const hafeleKeating: readonly Row[] = [
   {
     id: "H01",
-    what: "gravitational part eastward from the flight's mean values",
+    what: "gravitational part, flight eastward",
     inputs: { h_m: 8900, t_h: 41.2, g: 9.8 },
     published: 144,
     got: () => gained(8900, 41.2),
@@ -27,7 +27,7 @@ export const hafeleKeating: readonly Row[] = [
   },
   {
     id: "H02",
-    what: "gravitational part westward from the flight's mean values",
+    what: "gravitational part, flight westward",
     inputs: { h_m: 9360, t_h: 48.6, g: 9.8 },
     published: 179,
     got: () => gained(9360, 48.6),
@@ -39,7 +39,7 @@ export const hafeleKeating: readonly Row[] = [
   },
   {
     id: "H05",
-    what: "net prediction eastward, sum of the table's parts",
+    what: "net prediction eastward, sum of parts",
     inputs: { parts: [144, -184] },
     published: -40,
     got: () => net(144, -184),
@@ -52,7 +52,7 @@ export const hafeleKeating: readonly Row[] = [
   },
   {
     id: "H06",
-    what: "net prediction westward, sum of the table's parts",
+    what: "net prediction westward, sum of parts",
     inputs: { parts: [179, 96] },
     published: 275,
     got: () => net(179, 96),

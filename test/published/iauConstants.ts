@@ -1,4 +1,3 @@
-import { oblateness } from "../../src/bodies/index.ts";
 import { C, C2, constants, EARTH_ROTATION, GM_EARTH, LG } from "../../src/units/index.ts";
 import type { Row } from "./row.ts";
 
@@ -20,7 +19,7 @@ export const iauConstants: readonly Row[] = [
   },
   {
     id: "K02",
-    what: "L_G from the geopotential W0 adopted with it, W0/c^2",
+    what: "L_G as W0/c^2 of the W0 adopted with it",
     inputs: { W0_m2s2: 62_636_856 },
     published: 6.969290134e-10,
     got: () => 62_636_856 / C2,
@@ -33,7 +32,7 @@ export const iauConstants: readonly Row[] = [
   },
   {
     id: "K05",
-    what: "TT-compatible GM of the Earth, GM (1 - L_G)",
+    what: "TT-compatible GM, GM (1 - L_G)",
     inputs: { GM: 3.986004418e14 },
     published: 398_600_441_500_000,
     got: () => GM_EARTH * (1 - LG),
@@ -70,7 +69,7 @@ export const iauConstants: readonly Row[] = [
   },
   {
     id: "E07",
-    what: "rotation of the Earth from the angle's 1.00273781191135448 turns a day",
+    what: "rotation of the Earth",
     inputs: {},
     published: 7.292115e-5,
     got: () => EARTH_ROTATION,
@@ -78,18 +77,6 @@ export const iauConstants: readonly Row[] = [
     unit: "rad/s",
     source: "IERS Conv. (2010) Table 1.1",
     standing: "from memory",
-    place: "units: EARTH_ROTATION",
-  },
-  {
-    id: "E08",
-    what: "J2 of the field in use, zero tide",
-    inputs: {},
-    published: 1.0826359e-3,
-    got: () => oblateness,
-    tolerance: 1e-10,
-    unit: "1",
-    source: "IERS Conv. (2010) Table 1.1 (with its uncertainty 1e-10)",
-    standing: "from memory",
-    place: "bodies: oblateness",
+    place: "units: EARTH_ROTATION, from the turns a day of IAU 2000 Res. B1.8",
   },
 ];

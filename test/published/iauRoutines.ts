@@ -27,13 +27,16 @@ function celestialToTerrestrial(): readonly number[] {
   return new EarthAxes(date, { ut1MinusTai, xPole: 2.55060238e-7, yPole: 1.860359247e-6 }).rotation(0);
 }
 
-/** The frames and the ellipsoid against the test numbers of the IAU-derived routines. */
+/**
+ * The frames and the ellipsoid against the test numbers of the IAU-derived routines. The list prints up to nineteen digits;
+ * here stand as many as a double holds.
+ */
 export const iauRoutines: readonly Row[] = [
   {
     id: "E01",
-    what: "nutation in longitude and obliquity, IAU 2000B",
+    what: "nutation, IAU 2000B",
     inputs: { ttMjd: 53_736 },
-    published: [-0.9632552291148362783e-5, 0.4063197106621159367e-4],
+    published: [-9.632552291148363e-6, 4.063197106621159e-5],
     got: () => {
       const { longitude, obliquity } = nutation2000B(centuries);
       return [longitude, obliquity];
@@ -48,7 +51,7 @@ export const iauRoutines: readonly Row[] = [
     id: "E02",
     what: "Earth rotation angle",
     inputs: { ut1Mjd: 54_388 },
-    published: 0.4022837240028158102,
+    published: 0.4022837240028158,
     got: () => earthRotationAngle({ seconds: (54_388 - 40_587) * 86_400, picoseconds: 0 }, 0),
     tolerance: 1e-12,
     unit: "rad",
@@ -60,7 +63,7 @@ export const iauRoutines: readonly Row[] = [
     id: "E03",
     what: "Greenwich apparent sidereal time",
     inputs: { ttMjd: 53_736, ut1Mjd: 53_736 },
-    published: 1.754166137675019159,
+    published: 1.754166137675019,
     got: siderealTime,
     tolerance: milliarcsecond,
     unit: "rad",
@@ -71,13 +74,13 @@ export const iauRoutines: readonly Row[] = [
   },
   {
     id: "E04",
-    what: "celestial to terrestrial matrix with polar motion, nine numbers",
+    what: "celestial to terrestrial matrix",
     inputs: { ttMjd: 53_736, ut1Mjd: 53_736, xPole: 2.55060238e-7, yPole: 1.860359247e-6 },
     // biome-ignore format: one row of the matrix a line
     published: [
-      -0.1810332128305897282, 0.9834769806938592296, 0.6555550962998436505e-4,
-      -0.9834768134136214897, -0.1810332203649130832, 0.574980084490559411e-3,
-      0.5773474024748545878e-3, 0.3961816829632690581e-4, 0.9999998325501747785,
+      -0.18103321283058973, 0.9834769806938592, 6.555550962998436e-5,
+      -0.9834768134136215, -0.1810332203649131, 5.749800844905594e-4,
+      5.773474024748546e-4, 3.9618168296326906e-5, 0.9999998325501748,
     ],
     got: celestialToTerrestrial,
     tolerance: milliarcsecond,
@@ -91,7 +94,7 @@ export const iauRoutines: readonly Row[] = [
     id: "E05",
     what: "geodetic to geocentric, WGS 84",
     inputs: { longitude: 3.1, latitude: -0.5, height_m: 2500 },
-    published: [-5_599_000.5577049947, 233_011.67223479203, -3_040_909.4706983363],
+    published: [-5_599_000.557704994, 233_011.67223479203, -3_040_909.470698336],
     got: () => geodeticToFixed(-0.5, 3.1, 2500),
     tolerance: 1e-7,
     unit: "m",

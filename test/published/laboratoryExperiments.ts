@@ -22,7 +22,7 @@ const stretch = (beta: number): number => 1 / (1 + lorentzRate(beta * beta * C2)
 export const laboratoryExperiments: readonly Row[] = [
   {
     id: "K13",
-    what: "growth of a clock's rate with height, g/c^2",
+    what: "growth of rate with height, g/c^2",
     inputs: { g: 9.80665 },
     published: 1.09e-16,
     got: () => lift(9.80665, -5, 5) / 10,
@@ -47,7 +47,7 @@ export const laboratoryExperiments: readonly Row[] = [
   },
   {
     id: "H10",
-    what: "lifetime of stored negative muons, gamma tau0",
+    what: "lifetime of stored muons, gamma tau0",
     inputs: { gamma: 29.33, tau0_us: 2.1948 },
     published: 64.368,
     got: () => stretch(Math.sqrt(1 - 1 / 29.33 ** 2)) * 2.1948,
@@ -83,7 +83,7 @@ export const laboratoryExperiments: readonly Row[] = [
   },
   {
     id: "H13",
-    what: "shift of a clock at NIST Boulder against TT, about 1650 m above the geoid",
+    what: "rate at NIST Boulder, 1650 m above the geoid",
     inputs: { H_m: 1650, g: 9.797, latitudeDeg: 40, longitudeDeg: -105.26 },
     published: 1.8e-13,
     got: () => restingRate(40 * DEGREE, -105.26 * DEGREE, 1650, "geoid"),

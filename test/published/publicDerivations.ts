@@ -28,7 +28,7 @@ function lowering(semiMajorAxis: number, change: number): number {
 export const publicDerivations: readonly Row[] = [
   {
     id: "G07",
-    what: "velocity part alone at 3874 m/s",
+    what: "velocity part at 3874 m/s",
     inputs: { v: 3874 },
     published: -7214,
     got: () => lorentzRate(3874 * 3874) * DAY * 1e9,
@@ -40,7 +40,7 @@ export const publicDerivations: readonly Row[] = [
   },
   {
     id: "G08",
-    what: "gravity part alone against the geoid, L_G - GM/(a c^2)",
+    what: "gravity part, L_G - GM/(a c^2)",
     inputs: { a_m: 26_561_400 },
     published: 45.8,
     got: () => gravityAgainstGeoid(26_561_400) * DAY * 1e6,
@@ -53,7 +53,7 @@ export const publicDerivations: readonly Row[] = [
   },
   {
     id: "G16",
-    what: "orbit change of SV43 in July 2000: the lowering that gives -1.77e-13",
+    what: "SV43 in July 2000, lowering for -1.77e-13",
     inputs: { dff: -1.77e-13, a_m: 26_561_400 },
     published: 18.77,
     got: () => lowering(26_561_400, -1.77e-13) / 1000,

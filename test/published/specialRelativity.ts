@@ -24,7 +24,7 @@ export const specialRelativity: readonly Row[] = [
   },
   {
     id: "R11",
-    what: "gamma - 1 against beta^2/2 at a GPS speed: relative difference 3/4 beta^2",
+    what: "(gamma - 1)/(beta^2/2) - 1 at a GPS speed",
     inputs: { beta: 1.292e-5 },
     published: 1.25e-10,
     got: () => beyondFirstOrder(1.292e-5),

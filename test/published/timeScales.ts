@@ -69,7 +69,7 @@ export const timeScales: readonly Row[] = [
   },
   {
     id: "S01",
-    what: "positive leap seconds from 1972-07 to 2017-01",
+    what: "positive leap seconds, 1972 to 2017",
     inputs: {},
     published: 27,
     got: positiveSteps,
@@ -81,8 +81,8 @@ export const timeScales: readonly Row[] = [
   },
   {
     id: "S02",
-    what: "TAI - UTC on 2003-06-01, 2008-01-17 and 2017-09-01",
-    inputs: {},
+    what: "TAI - UTC in 2003, 2008 and 2017",
+    inputs: { days: "2003-06-01, 2008-01-17, 2017-09-01" },
     published: [32, 33, 37],
     got: () => [dayNumber(2003, 6, 1), dayNumber(2008, 1, 17), dayNumber(2017, 9, 1)].map((d) => table.offsetOnDay(d)),
     tolerance: 0,
@@ -93,7 +93,7 @@ export const timeScales: readonly Row[] = [
   },
   {
     id: "S03",
-    what: "fraction 0.99999 of a day of 86 401 s, second of 23:59",
+    what: "0.99999 of 86 401 s",
     inputs: { mjd: 49_533.99999, ndp: 5 },
     published: 60.13599,
     got: () => secondOfMinute(49_533.99999),
@@ -105,8 +105,8 @@ export const timeScales: readonly Row[] = [
   },
   {
     id: "S04",
-    what: "2016-12-31T23:59:60Z and 2017-01-01T00:00:00Z in TAI seconds of 2017-01-01",
-    inputs: {},
+    what: "TAI of 23:59:60 and 00:00:00",
+    inputs: { utc: "2016-12-31T23:59:60Z, 2017-01-01T00:00:00Z", countedFrom: "2017-01-01 TAI" },
     published: [36, 37],
     got: () => [taiSeconds("2016-12-31T23:59:60Z"), taiSeconds("2017-01-01T00:00:00Z")],
     tolerance: 0,
@@ -129,7 +129,7 @@ export const timeScales: readonly Row[] = [
   },
   {
     id: "S06",
-    what: "TAI - UTC at 1972-01-01 by the rate of 1968, before the step to 10 s",
+    what: "TAI - UTC of 1972-01-01 by 1968 rate",
     inputs: { offset: 4.21317, fromMjd: 39_126, rate: 0.002592 },
     published: 9.892242,
     got: beforeTheSteps,
@@ -137,6 +137,6 @@ export const timeScales: readonly Row[] = [
     unit: "s",
     source: "tai-utc.dat (1968 Feb 1 line)",
     standing: "from memory",
-    place: "time: dayNumber; the rate is not the project's, which refuses UTC before 1972",
+    place: "time: dayNumber; offset and rate are inputs, for UTC before 1972 is refused",
   },
 ];

@@ -4,6 +4,7 @@ import { cross, dot, norm, type Vec3 } from "../../src/numeric/index.ts";
 import { type KeplerianElements, osculatingElements, twoBodyState } from "../../src/orbit/index.ts";
 import { TableTrajectory } from "../../src/orbit/table.ts";
 import { endTerm, ProperTime, rateTerms, secularMeanRate, twoBodyMeanRate } from "../../src/relativity/index.ts";
+import { addSeconds } from "../../src/time/index.ts";
 import { C2, DAY, DEGREE, GM_EARTH, LG } from "../../src/units/index.ts";
 import { type Derivative, integrate } from "../support/extrapolation.ts";
 import { axes, epoch, orbitClasses, tabulate, twoBodyTrajectory } from "../support/orbits.ts";
@@ -50,7 +51,10 @@ describe("two-body closed form: virial theorem and energy, exact to c^-2", () =>
   };
   it.each(Object.entries(orbitClasses))("%s: the same along a table of states", (name, elements) => {
     const { times, states } = tabulate((t) => twoBodyState(elements, t), steps[name as keyof typeof steps], 10 * DAY);
-    const table = new TableTrajectory(epoch, times, states, axes, { notices: [], implausible: false });
+    const table = new TableTrajectory(epoch, addSeconds(epoch, times.at(-1)!), times, states, axes, {
+      notices: [],
+      implausible: false,
+    });
     const properTime = new ProperTime(table, [velocityToSecondOrder, monopole, surface], 0);
     const error = Math.abs(sum(properTime.between(0, 10 * DAY)) - closed(elements, 0, 10 * DAY));
     expect(error).toBeLessThan(1e-15);
@@ -114,7 +118,10 @@ describe("monopole and J2", () => {
     }
     const times = Float64Array.from(knots, (_, i) => i * step);
     const states = Float64Array.from(knots.flatMap((knot) => [...knot.subarray(0, 6)]));
-    const table = new TableTrajectory(epoch, times, states, axes, { notices: [], implausible: false });
+    const table = new TableTrajectory(epoch, addSeconds(epoch, times.at(-1)!), times, states, axes, {
+      notices: [],
+      implausible: false,
+    });
     const terms = [velocityToSecondOrder, monopole, oblatenessTerm, surface];
     const properTime = new ProperTime(table, terms, 0);
     const product = (knot: Float64Array): number => knot[0]! * knot[3]! + knot[1]! * knot[4]! + knot[2]! * knot[5]!;

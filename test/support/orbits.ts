@@ -32,6 +32,8 @@ export function twoBodyTrajectory(elements: KeplerianElements, pieceLength = 360
     reference: epoch,
     from: Number.NEGATIVE_INFINITY,
     to: Number.POSITIVE_INFINITY,
+    first: null,
+    last: null,
     axes,
     notices: [],
     implausible: false,

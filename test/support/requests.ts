@@ -32,6 +32,15 @@ export const lowOrbit = (): Body => ({
   velocityKmPerS: [0, 4.9, 5.8],
 });
 
+/** Round once a day: cheap to propagate far. */
+export const highOrbit = (): Body => ({
+  kind: "state-vector",
+  frame: "GCRF",
+  epoch,
+  positionKm: [42_166, 0, 0],
+  velocityKmPerS: [0, 3.0746, 0.02],
+});
+
 /** GM of the Earth, km^3/s^2. Source: IERS Conventions (2010), table 1.1 (TCG-compatible, rounded). */
 const gm = 398_600.4418;
 

@@ -1,0 +1,27 @@
+import { ashby } from "./ashby.ts";
+import { galileoAndGlonass } from "./galileoAndGlonass.ts";
+import { gnssFigureRows } from "./gnssFigures.ts";
+import { gpsInterfaceSpecification } from "./gpsInterfaceSpecification.ts";
+import { hafeleKeating } from "./hafeleKeating.ts";
+import { iauConstants } from "./iauConstants.ts";
+import { iauRoutines } from "./iauRoutines.ts";
+import { laboratoryExperiments } from "./laboratoryExperiments.ts";
+import { publicDerivations } from "./publicDerivations.ts";
+import type { Row } from "./row.ts";
+import { specialRelativity } from "./specialRelativity.ts";
+import { timeScales } from "./timeScales.ts";
+
+/** Every row that needs no file: a new source family is a file of its own and a line here. */
+export const publishedRows: readonly Row[] = [
+  ...iauConstants,
+  ...ashby,
+  ...gpsInterfaceSpecification,
+  ...galileoAndGlonass,
+  ...publicDerivations,
+  ...hafeleKeating,
+  ...laboratoryExperiments,
+  ...timeScales,
+  ...specialRelativity,
+  ...iauRoutines,
+  ...gnssFigureRows,
+];
