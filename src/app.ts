@@ -11,7 +11,7 @@ import type { Bench } from "./wire/index.ts";
 const mostKept = 32;
 
 /** A bench that keeps the integrals used last, so that a trajectory seen before costs nothing. */
-export function keepingBench(config: Pick<Config, "leapSeconds" | "version">): Bench {
+function keepingBench(config: Pick<Config, "leapSeconds" | "version">): Bench {
   const kept = new Map<string, ProperTime>();
   return {
     leapSeconds: config.leapSeconds,

@@ -2,7 +2,7 @@ import { constants, GM_EARTH } from "../units/index.ts";
 import { geopotentialCoefficients } from "./geopotential.data.ts";
 
 /** Highest degree and order of the field. */
-export const geopotentialDegree = 4;
+const geopotentialDegree = 4;
 
 const reference = constants.geopotentialRadius.value;
 const size = geopotentialDegree + 2;

@@ -6,6 +6,6 @@ export {
   normalToFixed,
   normalToFixedRate,
 } from "./ellipsoid.ts";
-export { type FieldSample, geopotentialDegree, oblateness, oblatenessRadius, sampleField } from "./geopotential.ts";
-export { nutation2000B, siderealLessRotation, trueOfDate } from "./precessionNutation.ts";
+export { type FieldSample, oblateness, oblatenessRadius, sampleField } from "./geopotential.ts";
+export { nutation2000B, siderealLessRotation } from "./precessionNutation.ts";
 export { moonTable, sunMoonSource, sunTable } from "./sunMoon.ts";

@@ -62,7 +62,7 @@ export function nutation2000B(t: number): Nutation {
  * Source: IAU 2006 precession in Fukushima-Williams angles, Capitaine et al. (2003), A&A 412, 567, and IERS Conventions
  * (2010) 5.6.4; the figures of the polynomials from IAU 2006 (Hilton et al. 2006).
  */
-export function trueOfDate(t: number, nutation: Nutation): Mat3 {
+function trueOfDate(t: number, nutation: Nutation): Mat3 {
   const gamma = polynomial(t, -0.052928, 10.556378, 0.4932044, -0.00031238, -0.000002788, 0.000000026) * ARCSECOND;
   const phi = polynomial(t, 84381.412819, -46.811016, 0.0511268, 0.00053289, -0.00000044, -0.0000000176) * ARCSECOND;
   const psi = polynomial(t, -0.041775, 5038.481484, 1.5584175, -0.00018522, -0.000026452, -0.0000000148) * ARCSECOND;
@@ -74,7 +74,7 @@ export function trueOfDate(t: number, nutation: Nutation): Mat3 {
 }
 
 /** Mean obliquity of the ecliptic, rad. Source: IAU 2006, IERS Conventions (2010) eq. 5.40. */
-export const meanObliquity = (t: number): number =>
+const meanObliquity = (t: number): number =>
   polynomial(t, 84381.406, -46.836769, -0.0001831, 0.0020034, -0.000000576, -0.0000000434) * ARCSECOND;
 
 /**
@@ -120,7 +120,7 @@ export const intermediatePole = new TabulatedFunction(3, 2 * DAY, 12, (ttSeconds
 });
 
 /** Rotation from GCRF to axes with the pole at (X, Y) and no rotation about it. Source: IERS Conventions (2010) eq. 5.10. */
-export function poleMatrix(x: number, y: number): Mat3 {
+function poleMatrix(x: number, y: number): Mat3 {
   const z = Math.sqrt(1 - x * x - y * y);
   const a = 1 / (1 + z);
   return [1 - a * x * x, -a * x * y, -x, -a * x * y, 1 - a * y * y, -y, x, y, z];

@@ -1,5 +1,5 @@
 import { OpenAPIRegistry, OpenApiGeneratorV31 } from "@asteasolutions/zod-to-openapi";
-import { type ProblemCode, problemCatalogue } from "../problem/index.ts";
+import { noticeCatalogue, type ProblemCode, problemCatalogue } from "../problem/index.ts";
 import { caution, problemSchema, z } from "../wire/index.ts";
 import { calls } from "./calls.ts";
 
@@ -11,6 +11,11 @@ function catalogueText(): string {
     ([code, { status, title, remedy }]) => `| \`${code}\` | ${status} | ${title}. | ${remedy} |`,
   );
   return ["| type /problems/... | status | meaning | what to do |", "|---|---|---|---|", ...rows].join("\n");
+}
+
+function noticeText(): string {
+  const rows = Object.entries(noticeCatalogue).map(([code, meaning]) => `| \`${code}\` | ${meaning} |`);
+  return ["| code | meaning |", "|---|---|", ...rows].join("\n");
 }
 
 function problemResponses(codes: readonly ProblemCode[]) {
@@ -85,6 +90,8 @@ export function interfaceDocument(version: string): object {
         "**Signs.** A term is positive when it makes the clock run ahead of TT. Clock minus TT is the sum of all terms; the correction added to a reading is its negative.",
         "**Problems.** Every failure is RFC 9457 problem details with pointers to the faults:",
         catalogueText(),
+        "**Notices.** Remarks that travel with a good answer:",
+        noticeText(),
       ].join("\n\n"),
     },
     servers: [{ url: "/" }],

@@ -24,12 +24,6 @@ export function twoProduct(a: number, b: number): TwoPart {
   return { high, low: al * bl - (high - ah * bh - al * bh - ah * bl) };
 }
 
-/** Product of a two-part number and a double, good to about 1e-31 relative. */
-export function scaleTwoPart(a: TwoPart, k: number): TwoPart {
-  const p = twoProduct(a.high, k);
-  return twoSum(p.high, p.low + a.low * k);
-}
-
 /** Product of two two-part numbers, good to about 1e-31 relative. */
 export function multiplyTwoPart(a: TwoPart, b: TwoPart): TwoPart {
   const p = twoProduct(a.high, b.high);

@@ -1,9 +1,8 @@
 export { antiderivative, ChebyshevBasis, evaluateSeries } from "./chebyshev.ts";
-export { addToTwoPart, multiplyTwoPart, scaleTwoPart, type TwoPart, twoProduct, twoSum } from "./errorfree.ts";
+export { addToTwoPart, multiplyTwoPart, type TwoPart, twoProduct, twoSum } from "./errorfree.ts";
 export { accumulateKnot, interpolateStates, slopeAtKnot } from "./hermite.ts";
 export { TabulatedFunction } from "./tabulated.ts";
 export {
-  add,
   axisRotation,
   cross,
   dot,

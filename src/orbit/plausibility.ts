@@ -36,7 +36,7 @@ export function requirePossible(place: Place, state: Kinematics): void {
   requireSlowerThanLight([...place, "velocityKmPerS"], state.velocity);
 }
 
-export function requireSlowerThanLight(place: Place, velocity: Vec3): void {
+function requireSlowerThanLight(place: Place, velocity: Vec3): void {
   const v = norm(velocity);
   if (v < C) return;
   const hint = v / 1000 < 20_000 ? " Were metres per second given instead of km/s?" : "";

@@ -10,7 +10,7 @@ import { SteppedPath } from "./summedMultistep.ts";
 import type { OrbitError, StateArray, Trajectory } from "./trajectory.ts";
 
 /** A state is propagated so far from its epoch, either way. */
-export const propagationReach = 400 * DAY;
+const propagationReach = 400 * DAY;
 
 /** Nearer to the centre than this nothing is propagated: the state was not what was meant, and steps would vanish. */
 const innermost = 1_000e3;

@@ -1,7 +1,6 @@
 export { type NoticeCode, noticeCatalogue, type ProblemCode, problemCatalogue } from "./catalogue.ts";
 export {
   at,
-  BrokenInvariant,
   type Fault,
   forEachItem,
   invariant,

@@ -80,7 +80,7 @@ export interface Notice {
 }
 
 /** Thrown when this project's own reasoning fails; never the user's fault. */
-export class BrokenInvariant extends Error {
+class BrokenInvariant extends Error {
   constructor(message: string) {
     super(message);
     this.name = "BrokenInvariant";

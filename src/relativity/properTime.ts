@@ -47,7 +47,9 @@ export class ProperTime {
   /** First and last piece that are built; empty while first > last. */
   #first: number;
   #last: number;
-  #fastest = 0;
+  /** The start that was asked for last: nearly always the anchor. */
+  #lastFrom = Number.NaN;
+  #lastFromValues: Float64Array = new Float64Array(0);
 
   /** `origin`: time (TT seconds since the trajectory's reference) from which is counted outwards, inside the span. */
   constructor(trajectory: Trajectory, terms: readonly RateTerm[], origin: number) {
@@ -61,11 +63,6 @@ export class ProperTime {
     this.#samples = this.#integrated.map(() => new Float64Array(points));
   }
 
-  /** The greatest speed met so far as a fraction of c. */
-  get fastestBeta(): number {
-    return Math.sqrt(this.#fastest / C2);
-  }
-
   /** Rate of every term at t, dimensionless. */
   rates(t: number): number[] {
     this.trajectory.extend(t, t);
@@ -75,7 +72,11 @@ export class ProperTime {
 
   /** Accumulated value of every term between two times of the span, s, by TT seconds since the reference. */
   between(from: number, to: number): number[] {
-    const a = this.#accumulated(from);
+    if (from !== this.#lastFrom) {
+      this.#lastFromValues = this.#accumulated(from);
+      this.#lastFrom = from;
+    }
+    const a = this.#lastFromValues;
     const b = this.#accumulated(to);
     const out = this.terms.map((term) => (term.constant ? term.rate(this.#reader.environment) * (to - from) : 0));
     for (const [k, { index }] of this.#integrated.entries()) out[index] = b[k]! - a[k]!;
@@ -148,7 +149,6 @@ export class ProperTime {
           { place: [], expected: "states that are closer together, or consistent velocities" },
         ]);
       }
-      if (environment.speedSquared > this.#fastest) this.#fastest = environment.speedSquared;
       for (let k = 0; k < count; k++) this.#samples[k]![p] = this.#integrated[k]!.term.rate(environment);
     }
     const series = new Float64Array(this.#integrated.length * width);

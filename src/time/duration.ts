@@ -30,7 +30,7 @@ export function sumDurations(parts: readonly Duration[]): Duration {
 export const addDurations = (a: Duration, b: Duration): Duration =>
   normalised(a.seconds + b.seconds, a.femtoseconds + b.femtoseconds);
 
-export const negate = (a: Duration): Duration => normalised(-a.seconds, a.femtoseconds === 0 ? 0 : -a.femtoseconds);
+const negate = (a: Duration): Duration => normalised(-a.seconds, a.femtoseconds === 0 ? 0 : -a.femtoseconds);
 
 export const subtractDurations = (a: Duration, b: Duration): Duration =>
   normalised(a.seconds - b.seconds, a.femtoseconds - b.femtoseconds);

@@ -6,7 +6,6 @@ export {
   durationFromNanoseconds,
   durationFromSeconds,
   formatDuration,
-  negate,
   subtractDurations,
   sumDurations,
   toNanoseconds,

@@ -1,7 +1,7 @@
 import { counterValueSchema, instantSchema, number, sigma } from "./sharedSchemas.ts";
 import { z } from "./zod.ts";
 
-export const counterSchema = z
+const counterSchema = z
   .strictObject({
     ticksPerSecond: z
       .union([
@@ -28,7 +28,7 @@ export const counterSchema = z
   })
   .openapi("Counter");
 
-export const oscillatorSchema = z
+const oscillatorSchema = z
   .strictObject({
     offsetNs: number.optional(),
     presetFractional: number

@@ -10,7 +10,7 @@ import {
   type Setting,
   settingNotices,
 } from "../correction/index.ts";
-import { forEachItem } from "../problem/index.ts";
+import { forEachItem, type Notice } from "../problem/index.ts";
 import type { ProperTime } from "../relativity/index.ts";
 import { formatDuration, formatInstant, type LeapSecondTable, toNanoseconds } from "../time/index.ts";
 import {
@@ -22,7 +22,7 @@ import {
   predictionRequestSchema,
 } from "./correctionSchemas.ts";
 import { readClockAndPath, readInstants, readReadings } from "./fromRequest.ts";
-import { writeCounterValue } from "./instants.ts";
+import { type InstantIn, writeCounterValue } from "./instants.ts";
 import { writeNotice } from "./problemDetails.ts";
 import { validate } from "./validate.ts";
 
@@ -100,6 +100,9 @@ export function predictedReadings(body: unknown, bench: Bench): PredictionRespon
   return { results, ...close(request, setting, predicted, bench) };
 }
 
+/** A standard uncertainty in ns; twelve digits are more than any is known to. */
+const sigmaNs = (sigma: number): number => Number((sigma * 1e9).toPrecision(12));
+
 function writeState(state: ClockState) {
   return {
     clockMinusTt: formatDuration(state.clockMinusTt),
@@ -111,21 +114,42 @@ function writeState(state: ClockState) {
       accumulated: formatDuration(accumulated),
       accumulatedNs: toNanoseconds(accumulated),
     })),
-    uncertaintyNs: state.combinedSigma * 1e9,
+    uncertaintyNs: sigmaNs(state.combinedSigma),
     uncertainty: state.uncertainty.map(({ source, type, sigma, shared }) => ({
       source,
       type,
-      ns: sigma * 1e9,
+      ns: sigmaNs(sigma),
       shared,
     })),
     flags: [...state.flags],
   };
 }
 
-function close(request: unknown, setting: Setting, states: readonly ClockState[], bench: Bench) {
+/** GPS time is related to TAI by its integer rule; who mixes it with UTC should know. */
+function scaleNotices({
+  scale,
+  clock,
+  instants,
+}: Shared & Pick<PredictionRequest, "scale"> & { instants?: PredictionRequest["instants"] }): Notice[] {
+  const isGps = (value: InstantIn): boolean => typeof value !== "string" && value.scale === "GPS";
+  if (scale !== "GPS" && !isGps(clock.anchor.at) && !instants?.some(isGps)) return [];
+  return [
+    {
+      code: "realised-scale",
+      text: "GPS time is taken as TAI - 19 s; the realised scale differs from that by nanoseconds, which are not in the uncertainty.",
+    },
+  ];
+}
+
+function close(
+  request: CorrectionRequest | PredictionRequest,
+  setting: Setting,
+  states: readonly ClockState[],
+  bench: Bench,
+) {
   const expired = states.some(({ flags }) => flags.includes("leap-table-expired"));
   return {
     evidence: makeEvidence(request, setting, bench.version),
-    notices: settingNotices(setting, expired).map(writeNotice),
+    notices: [...settingNotices(setting, expired), ...scaleNotices(request)].map(writeNotice),
   };
 }

@@ -35,7 +35,7 @@ function readRate(value: number | string): Rational {
   return rate;
 }
 
-export function readClock(clock: CorrectionRequest["clock"], leapSeconds: LeapSecondTable): Clock {
+function readClock(clock: CorrectionRequest["clock"], leapSeconds: LeapSecondTable): Clock {
   const counter: Counter = {
     ticksPerSecond: at(["counter", "ticksPerSecond"], () => readRate(clock.counter.ticksPerSecond)),
     widthBits: clock.counter.widthBits ?? null,
@@ -98,10 +98,7 @@ function requireCovariance(
   }
 }
 
-export function readTrajectory(
-  given: CorrectionRequest["trajectory"],
-  leapSeconds: LeapSecondTable,
-): TrajectoryDescription {
+function readTrajectory(given: CorrectionRequest["trajectory"], leapSeconds: LeapSecondTable): TrajectoryDescription {
   const instant = (value: InstantIn, ...place: (string | number)[]): Instant =>
     at(place, () => readInstant(value, leapSeconds));
   switch (given.kind) {
@@ -162,7 +159,7 @@ function readStateError(given: Extract<CorrectionRequest["trajectory"], { kind: 
   };
 }
 
-export const readOrientation = (given: CorrectionRequest["earthOrientation"]): GivenOrientation => ({
+const readOrientation = (given: CorrectionRequest["earthOrientation"]): GivenOrientation => ({
   ut1MinusUtc: given?.ut1MinusUtcS ?? null,
   xPole: orNull(given?.xPoleArcsec, ARCSECOND),
   yPole: orNull(given?.yPoleArcsec, ARCSECOND),

@@ -10,7 +10,7 @@ export {
   predictionResponseSchema,
 } from "./correctionSchemas.ts";
 export { type Bench, corrections, plainBench, predictedReadings } from "./corrections.ts";
-export { jsonPointer, type ProblemDetails, problemDetails } from "./problemDetails.ts";
+export { type ProblemDetails, problemDetails } from "./problemDetails.ts";
 export { problemSchema } from "./sharedSchemas.ts";
-export { parseJson, validate } from "./validate.ts";
+export { parseJson } from "./validate.ts";
 export { z } from "./zod.ts";

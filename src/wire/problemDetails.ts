@@ -1,7 +1,7 @@
 import { type Notice, type Place, type Problem, problemCatalogue } from "../problem/index.ts";
 
 /** RFC 6901. */
-export const jsonPointer = (place: Place): string =>
+const jsonPointer = (place: Place): string =>
   place.map((part) => `/${String(part).replaceAll("~", "~0").replaceAll("/", "~1")}`).join("");
 
 export interface ProblemDetails {

@@ -4,7 +4,6 @@ import { z } from "./zod.ts";
 /** Shapes that several calls share. Plain: no transforms, so the interface document can be made from them. */
 
 export const number = z.number();
-export const positive = z.number().gt(0);
 export const sigma = z.number().min(0);
 
 export const scaleSchema = z.enum(scales).openapi("Scale", {

@@ -6,7 +6,6 @@ import { type ProblemCode, problemCatalogue } from "../../src/problem/index.ts";
 import { defaultLeapSeconds } from "../../src/time/index.ts";
 import { documentAllows, holdAgainstDocument, holdProblem } from "../support/contract.ts";
 import {
-  after,
   altered,
   type Body,
   circleTable,
@@ -16,6 +15,7 @@ import {
   highOrbit,
   lowOrbit,
   millisecondClock,
+  moment,
   mountain,
   prediction,
 } from "../support/requests.ts";
@@ -484,7 +484,7 @@ const instants: readonly Case[] = [
   {
     name: "instant, to predict for",
     path: predictions,
-    body: prediction({ instants: [after(1), "2026-03-01T00:00:00"] }),
+    body: prediction({ instants: [moment(1), "2026-03-01T00:00:00"] }),
     status: 400,
     code: "invalid-instant",
     pointer: "/instants/1",
@@ -627,7 +627,7 @@ const clocks: readonly Case[] = [
     "near outside the span",
     withClock("/clock/counter/widthBits", 24, {
       trajectory: flight(),
-      readings: [{ reading: 1000, near: after(20_000) }],
+      readings: [{ reading: 1000, near: moment(20_000) }],
     }),
     "/readings/0/near",
     /2026-03-01T00:00:00.*2026-03-01T04:00:00/,
@@ -715,13 +715,13 @@ const trajectories: readonly Case[] = [
   ),
   tableCase(
     "states out of order",
-    table("/trajectory/states/5/epoch", after(10_000)),
+    table("/trajectory/states/5/epoch", moment(10_000)),
     "/trajectory/states/6/epoch",
     /rise/,
   ),
   tableCase(
     "two states of one epoch",
-    table("/trajectory/states/5/epoch", after(240)),
+    table("/trajectory/states/5/epoch", moment(240)),
     "/trajectory/states/5/epoch",
     /same instant/,
   ),
@@ -738,7 +738,7 @@ const trajectories: readonly Case[] = [
     /velocity/,
   ),
   tableCase("four states without velocities", bare(4), "/trajectory/states", /at least 5/),
-  tableCase("points out of order", track("/trajectory/points/1/at", after(99_999)), "/trajectory/points/2/at", /rise/),
+  tableCase("points out of order", track("/trajectory/points/1/at", moment(99_999)), "/trajectory/points/2/at", /rise/),
   tableCase(
     "two points of one instant",
     track("/trajectory/points/1/at", epoch),
@@ -752,7 +752,7 @@ const trajectories: readonly Case[] = [
         ...flight(),
         points: [
           { at: epoch, latitudeDeg: 0, longitudeDeg: 0, heightM: 0 },
-          { at: after(80_000), latitudeDeg: 0, longitudeDeg: 180, heightM: 0 },
+          { at: moment(80_000), latitudeDeg: 0, longitudeDeg: 180, heightM: 0 },
         ],
       },
     }),
@@ -761,7 +761,7 @@ const trajectories: readonly Case[] = [
   ),
   tableCase(
     "a track that is too fast",
-    track("/trajectory/points/1/at", after(60)),
+    track("/trajectory/points/1/at", moment(60)),
     "/trajectory/points/1",
     /12 km\/s/,
   ),
@@ -807,8 +807,8 @@ const spans: readonly {
     trajectory: flight(),
     reading: -1,
     span: /2026-03-01T00:00:00\.0+Z to 2026-03-01T04:00:00\.0+Z/,
-    anchor: after(14_401),
-    late: after(14_400.001),
+    anchor: moment(14_401),
+    late: moment(14_400.001),
   },
   {
     kind: "surface",

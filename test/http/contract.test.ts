@@ -3,7 +3,6 @@ import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { physicalTermNames } from "../../src/relativity/index.ts";
 import { document, documentAllows, holdAgainstDocument, holdGoodAnswer, operation } from "../support/contract.ts";
 import {
-  after,
   altered,
   type Body,
   circleTable,
@@ -13,6 +12,7 @@ import {
   highOrbit,
   lowOrbit,
   millisecondClock,
+  moment,
   mountain,
   prediction,
 } from "../support/requests.ts";
@@ -130,12 +130,12 @@ const corrections: Readonly<Record<string, Body>> = {
   ...shared,
   "readings with ids": { readings: [{ id: "first", reading: 1 }, { id: "", reading: "2" }, { reading: 3 }] },
   "readings before and after the anchor": { readings: [{ reading: -1000 }, { reading: 0 }, { reading: 1000 }] },
-  "near as UTC": { clock: wide(), readings: [{ reading: 900, near: after(1048) }] },
+  "near as UTC": { clock: wide(), readings: [{ reading: 900, near: moment(1048) }] },
   "near in another scale": {
     clock: wide(),
     readings: [{ reading: 900, near: { at: "2026-03-01T00:18:05", scale: "TAI" } }],
   },
-  "near in the middle of two meanings": { clock: wide(), readings: [{ reading: 1000, near: after(524.288) }] },
+  "near in the middle of two meanings": { clock: wide(), readings: [{ reading: 1000, near: moment(524.288) }] },
   "unwrap after": { clock: wide(), readings: [{ reading: 900 }], unwrap: "after" },
   "unwrap before": { clock: wide(), readings: [{ reading: 1100 }], unwrap: "before" },
   "unwrap nearest": { clock: wide(), readings: [{ reading: 900 }], unwrap: "nearest" },
@@ -148,10 +148,10 @@ const corrections: Readonly<Record<string, Body>> = {
 const predictions: Readonly<Record<string, Body>> = {
   ...shared,
   "instants in several scales": {
-    instants: [after(1), { at: "2026-03-01T01:00:37.5", scale: "TAI" }, { at: "2026-060T01:01:09.184", scale: "TT" }],
+    instants: [moment(1), { at: "2026-03-01T01:00:37.5", scale: "TAI" }, { at: "2026-060T01:01:09.184", scale: "TT" }],
   },
-  "an instant before the anchor": { instants: [after(-3600)] },
-  "a reading past a rollover": { clock: wide(), instants: [after(1100)] },
+  "an instant before the anchor": { instants: [moment(-3600)] },
+  "a reading past a rollover": { clock: wide(), instants: [moment(1100)] },
 };
 
 /** The result of a table whose clock starts elsewhere must be asked for there. */
@@ -286,9 +286,9 @@ describe("what an option does", () => {
 
   it.each([
     { kind: "state-vector", trajectory: highOrbit(), ends: ["2025-01-25T00:00:00Z", "2027-04-05T00:00:00Z"] },
-    { kind: "state-table", trajectory: circleTable(65, 60, true), ends: [epoch, after(3840)] },
-    { kind: "state-table without velocities", trajectory: circleTable(33, 60, false), ends: [epoch, after(1920)] },
-    { kind: "track", trajectory: flight(), ends: [epoch, after(14_400)] },
+    { kind: "state-table", trajectory: circleTable(65, 60, true), ends: [epoch, moment(3840)] },
+    { kind: "state-table without velocities", trajectory: circleTable(33, 60, false), ends: [epoch, moment(1920)] },
+    { kind: "track", trajectory: flight(), ends: [epoch, moment(14_400)] },
     { kind: "surface", trajectory: mountain(), ends: ["1972-01-01T00:00:00Z"], anchor: "1972-01-02T00:00:00Z" },
     {
       kind: "surface, at the other end",

@@ -18,7 +18,7 @@ function elements(semiMajorAxis: number, eccentricity: number, inclinationDeg: n
   return { semiMajorAxis, eccentricity, inclination: inclinationDeg * DEGREE, ...angles };
 }
 
-export const utc = (text: string): Instant => parseInstant(text, "UTC", defaultLeapSeconds);
+const utc = (text: string): Instant => parseInstant(text, "UTC", defaultLeapSeconds);
 
 export const epoch = utc("2026-03-01T00:00:00Z");
 

@@ -8,7 +8,7 @@ export type Body = any;
 export const epoch = "2026-03-01T00:00:00Z";
 
 /** The epoch and so many seconds, UTC; there is no leap second in 2026. */
-export const after = (seconds: number): string => new Date(Date.parse(epoch) + 1000 * seconds).toISOString();
+export const moment = (seconds: number): string => new Date(Date.parse(epoch) + 1000 * seconds).toISOString();
 
 export const millisecondClock = (): Body => ({
   counter: { ticksPerSecond: 1000 },
@@ -52,7 +52,7 @@ export function circleTable(count: number, stepS: number, withVelocities: boolea
     const angle = rate * stepS * i;
     const [c, s] = [Math.cos(angle), Math.sin(angle)];
     return {
-      epoch: after(stepS * i),
+      epoch: moment(stepS * i),
       positionKm: [radius * c, radius * s * 0.8, radius * s * 0.6],
       ...(withVelocities
         ? { velocityKmPerS: [-radius * rate * s, radius * rate * c * 0.8, radius * rate * c * 0.6] }
@@ -69,8 +69,8 @@ export const flight = (): Body => ({
   heightOf: "ellipsoid",
   points: [
     { at: epoch, latitudeDeg: 10, longitudeDeg: 20, heightM: 11_000 },
-    { at: after(7200), latitudeDeg: 14, longitudeDeg: 35, heightM: 11_500 },
-    { at: after(14_400), latitudeDeg: 9, longitudeDeg: 50, heightM: 10_000 },
+    { at: moment(7200), latitudeDeg: 14, longitudeDeg: 35, heightM: 11_500 },
+    { at: moment(14_400), latitudeDeg: 9, longitudeDeg: 50, heightM: 10_000 },
   ],
 });
 
@@ -84,7 +84,7 @@ export const correction = (changes: Body = {}): Body => ({
 export const prediction = (changes: Body = {}): Body => ({
   clock: millisecondClock(),
   trajectory: mountain(),
-  instants: [after(3600)],
+  instants: [moment(3600)],
   ...changes,
 });
 
