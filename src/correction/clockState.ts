@@ -28,9 +28,10 @@ export function clockStateAt(setting: Setting, elapsed: Duration, asRead: boolea
   };
 }
 
-function commonFlags({ trajectory, leapSeconds, clock }: Setting, at: Instant): Flag[] {
+function commonFlags({ trajectory, leapSeconds, clock, basis }: Setting, at: Instant): Flag[] {
   const out: Flag[] = [];
   if (compareInstants(at, clock.anchor.at) < 0) out.push("before-anchor");
+  if (basis === "predicted") out.push("predicted-orbit");
   if (trajectory.coarse) out.push("coarse-ephemeris");
   if (trajectory.implausible) out.push("implausible-orbit");
   if (isInLeapSecond(at, leapSeconds)) out.push("leap-second");

@@ -15,6 +15,9 @@ export interface Clock {
   readonly oscillator: Oscillator | null;
 }
 
+/** A trajectory computed ahead, or afterwards from measurements. */
+export type Basis = "predicted" | "reconstructed";
+
 export type Unwrap = "after" | "before" | "nearest";
 
 export interface Reading {
@@ -30,6 +33,8 @@ export interface Setting {
   readonly leapSeconds: LeapSecondTable;
   /** The trajectory's span inside the covered years: exact, and in TT seconds since the trajectory's reference. */
   readonly window: { readonly first: Instant; readonly last: Instant; readonly from: number; readonly to: number };
+  /** Where the orbit comes from, as far as it was said. */
+  readonly basis: Basis | null;
   /** UT1 - UTC and the pole were given. */
   readonly earthOrientationGiven: boolean;
 }
@@ -38,6 +43,7 @@ export type Flag =
   | "rollover"
   | "ambiguous-rollover"
   | "before-anchor"
+  | "predicted-orbit"
   | "implausible-orbit"
   | "coarse-ephemeris"
   | "leap-second"

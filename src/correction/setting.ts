@@ -14,7 +14,7 @@ import {
 } from "../time/index.ts";
 import { isInside, outsideSpan } from "./clockState.ts";
 import { beyondWidth } from "./correct.ts";
-import type { Clock, Setting } from "./model.ts";
+import type { Basis, Clock, Setting } from "./model.ts";
 
 /** UT1 - UTC (s) and pole coordinates (rad); null: not given. */
 export interface GivenOrientation {
@@ -53,7 +53,7 @@ export function buildProperTime(request: PathRequest, leapSeconds: LeapSecondTab
 export function makeSetting(
   clock: Clock,
   properTime: ProperTime,
-  orientation: GivenOrientation,
+  given: { readonly orientation: GivenOrientation; readonly basis: Basis | null },
   leapSeconds: LeapSecondTable,
 ): Setting {
   const { widthBits } = clock.counter;
@@ -73,7 +73,8 @@ export function makeSetting(
     properTime,
     leapSeconds,
     window: { first, last, from, to },
-    earthOrientationGiven: orientation.ut1MinusUtc !== null,
+    basis: given.basis,
+    earthOrientationGiven: given.orientation.ut1MinusUtc !== null,
   };
   if (!isInside(setting, clock.anchor.at)) {
     const text = formatInstant(clock.anchor.at, "UTC", leapSeconds);

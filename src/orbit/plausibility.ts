@@ -105,10 +105,20 @@ export function implausibleTable(
   states: Float64Array,
   axes: EarthAxes,
 ): Omit<Notice, "place"> | null {
-  const asGiven = disagreement(times, states, null);
+  const asGiven = disagreement(times, states);
   if (asGiven === null || asGiven < 0.01) return null;
-  const sign = frame === "ITRF" ? -1 : 1;
-  const other = disagreement(times, states, (i) => scale(axes.angularVelocity(times[i]!), sign));
+  // The other reading of the same numbers: Earth-fixed where an inertial frame was named, or the reverse.
+  const otherStates = states.slice();
+  for (let i = 0; i < times.length; i++) {
+    const position: Vec3 = [states[6 * i]!, states[6 * i + 1]!, states[6 * i + 2]!];
+    const velocity: Vec3 = [states[6 * i + 3]!, states[6 * i + 4]!, states[6 * i + 5]!];
+    const other =
+      frame === "ITRF"
+        ? axes.toEarthFixed(times[i]!, position, velocity)
+        : axes.toInertial(times[i]!, position, velocity);
+    otherStates.set([...other.position, ...other.velocity], 6 * i);
+  }
+  const other = disagreement(times, otherStates);
   const percent = (x: number): string => `${(100 * x).toPrecision(2)} %`;
   const start = `The table's change of velocity in ${frame} disagrees with gravity by ${percent(asGiven)}`;
   if (other !== null && other < 0.01) {
@@ -116,35 +126,25 @@ export function implausibleTable(
       code: "implausible-orbit",
       text:
         frame === "ITRF"
-          ? `${start}; with the velocities taken as inertial by ${percent(other)}: an inertial frame was probably meant.`
-          : `${start}; with the Earth's rotation added by ${percent(other)}: Earth-fixed components were probably meant, frame ITRF.`,
+          ? `${start}; read as inertial by ${percent(other)}: an inertial frame was probably meant.`
+          : `${start}; read as Earth-fixed by ${percent(other)}: Earth-fixed components were probably meant, frame ITRF.`,
     };
   }
   return { code: "implausible-orbit", text: `${start}: thrust, a wrong frame or wrong units; check the table.` };
 }
 
 /** Sum of |change of velocity - integral of gravity| over the sum of |integral of gravity|; null when too coarse to say. */
-function disagreement(
-  times: Float64Array,
-  states: Float64Array,
-  rotation: ((i: number) => Vec3) | null,
-): number | null {
+function disagreement(times: Float64Array, states: Float64Array): number | null {
   let off = 0;
   let all = 0;
-  const velocityAt = (i: number): Vec3 => {
-    const at = 6 * i;
-    const v: Vec3 = [states[at + 3]!, states[at + 4]!, states[at + 5]!];
-    if (rotation === null) return v;
-    return addRotation(v, cross(rotation(i), [states[at]!, states[at + 1]!, states[at + 2]!]));
-  };
   for (let i = 0; i + 1 < times.length; i++) {
     const dt = times[i + 1]! - times[i]!;
     const a: Vec3 = [states[6 * i]!, states[6 * i + 1]!, states[6 * i + 2]!];
     const b: Vec3 = [states[6 * i + 6]!, states[6 * i + 7]!, states[6 * i + 8]!];
     const r = norm(a);
     if (Math.sqrt(GM_EARTH / r ** 3) * dt > 0.5) continue;
-    const va = velocityAt(i);
-    const vb = velocityAt(i + 1);
+    const va: Vec3 = [states[6 * i + 3]!, states[6 * i + 4]!, states[6 * i + 5]!];
+    const vb: Vec3 = [states[6 * i + 9]!, states[6 * i + 10]!, states[6 * i + 11]!];
     // The place in the middle by a cubic through both ends; Simpson's rule for the attraction.
     const middle: Vec3 = [0, 1, 2].map((k) => (a[k]! + b[k]!) / 2 + (dt / 8) * (va[k]! - vb[k]!)) as unknown as Vec3;
     const pull = [0, 1, 2].map(

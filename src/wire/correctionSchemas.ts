@@ -1,6 +1,7 @@
 import { physicalTermNames } from "../relativity/index.ts";
 import { clockSchema } from "./clockSchemas.ts";
 import {
+  basisSchema,
   counterValueSchema,
   evidenceSchema,
   flagSchema,
@@ -60,7 +61,7 @@ const stateFields = {
   flags: z.array(flagSchema),
 };
 
-const closing = { evidence: evidenceSchema, notices: z.array(noticeSchema) };
+const closing = { basis: basisSchema.optional(), evidence: evidenceSchema, notices: z.array(noticeSchema) };
 
 export const correctionResponseSchema = z
   .strictObject({

@@ -46,10 +46,13 @@ type Shared = Pick<CorrectionRequest, "clock" | "trajectory" | "terms" | "earthO
 function prepare(request: Shared, bench: Bench): Setting {
   const { clock, path } = readClockAndPath(request, bench.leapSeconds);
   const properTime = bench.properTime(pathDigest(request), () => build(path, bench.leapSeconds));
-  return makeSetting(clock, properTime, path.orientation, bench.leapSeconds);
+  return makeSetting(clock, properTime, { orientation: path.orientation, basis: basisOf(request) }, bench.leapSeconds);
 }
 
 const build = (path: PathRequest, leapSeconds: LeapSecondTable): ProperTime => buildProperTime(path, leapSeconds);
+
+const basisOf = ({ trajectory }: Pick<Shared, "trajectory">) =>
+  "basis" in trajectory ? (trajectory.basis ?? null) : null;
 
 function pathDigest({ clock, trajectory, terms, earthOrientation }: Shared): string {
   return canonicalDigest({
@@ -149,6 +152,7 @@ function close(
 ) {
   const expired = states.some(({ flags }) => flags.includes("leap-table-expired"));
   return {
+    ...(setting.basis === null ? {} : { basis: setting.basis }),
     evidence: makeEvidence(request, setting, bench.version),
     notices: [...settingNotices(setting, expired), ...scaleNotices(request)].map(writeNotice),
   };

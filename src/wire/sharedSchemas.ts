@@ -62,11 +62,16 @@ export const uncertaintyItemSchema = z
   })
   .openapi("UncertaintyItem");
 
+export const basisSchema = z
+  .enum(["predicted", "reconstructed"])
+  .openapi("Basis", { description: "Whether the orbit was computed ahead or afterwards from measurements; echoed." });
+
 export const flagSchema = z
   .enum([
     "rollover",
     "ambiguous-rollover",
     "before-anchor",
+    "predicted-orbit",
     "implausible-orbit",
     "coarse-ephemeris",
     "leap-second",

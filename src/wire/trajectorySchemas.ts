@@ -1,5 +1,5 @@
 import { frames } from "../orbit/index.ts";
-import { instantSchema, number, sigma, vectorSchema } from "./sharedSchemas.ts";
+import { basisSchema, instantSchema, number, sigma, vectorSchema } from "./sharedSchemas.ts";
 import { z } from "./zod.ts";
 
 const frameSchema = z.enum(frames).openapi("Frame", {
@@ -26,7 +26,7 @@ const stateVectorSchema = z
       .max(6)
       .optional()
       .openapi({ description: "Radial, transverse, normal position (km) and velocity (km/s)." }),
-    basis: z.enum(["predicted", "reconstructed"]).optional(),
+    basis: basisSchema.optional(),
   })
   .openapi("StateVector", { description: "One state, propagated at most 400 days either way." });
 
@@ -41,7 +41,7 @@ const stateTableSchema = z
       )
       .min(2)
       .max(200_000),
-    basis: z.enum(["predicted", "reconstructed"]).optional(),
+    basis: basisSchema.optional(),
   })
   .openapi("StateTable", { description: "States in rising order, interpolated inside and never used outside." });
 

@@ -422,7 +422,7 @@ describe("another leap-second table", () => {
     ["no digest", old.replace(/#h.*/, ""), /digest line/],
     ["no expiry", old.replace(/#@.*/, ""), /expiry/],
     ["no update", old.replace(/#\$.*/, ""), /last update/],
-    ["a step within a day", old.replace(String(ntp("2015-07-01")), String(ntp("2015-07-01") + 1)), /midnight|whole/],
+    ["a step within a day", old.replace(`${ntp("2015-07-01")} 11`, `${ntp("2015-07-01") + 1} 11`), /midnight|whole/],
     ["text", "leap seconds are announced by letter\n", /line 1/],
     ["nothing", "", /first step/],
   ])("is refused when it is damaged: %s", (_name, text, reason) => {
