@@ -73,7 +73,6 @@ const homes = {
   "astronomy-engine": "^src/bodies/sunMoon\\.ts$",
   canonicalize: "^src/correction/evidence\\.ts$",
   commander: "^src/cli/program\\.ts$",
-  "cli-table3": "^src/cli/report\\.ts$",
   "satellite\\.js": "^src/orbit/[^/]+\\.ts$",
 };
 for (const [library, home] of Object.entries(homes)) {

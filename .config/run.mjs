@@ -1,7 +1,7 @@
 // Runs an entry of src as compiled JavaScript; compiles first when dist is missing or older than src.
 // Usage: node .config/run.mjs ENTRY [ARGS]   (ENTRY: a file of src without its suffix, "main" or "demo")
 import { spawnSync } from "node:child_process";
-import { existsSync, readdirSync, rmSync, statSync, utimesSync, writeFileSync } from "node:fs";
+import { existsSync, mkdirSync, readdirSync, rmSync, statSync, utimesSync, writeFileSync } from "node:fs";
 import { dirname, join } from "node:path";
 import { fileURLToPath, pathToFileURL } from "node:url";
 
@@ -17,8 +17,13 @@ function newestIn(folder) {
 }
 
 const configs = ["package.json", "tsconfig.json", ".config/tsconfig.build.json"].map((f) => join(root, f));
-const newest = Math.max(newestIn(join(root, "src")), ...configs.map((f) => statSync(f).mtimeMs));
-if (!existsSync(stamp) || statSync(stamp).mtimeMs < newest) {
+
+function isFresh() {
+  const newest = Math.max(newestIn(join(root, "src")), ...configs.map((f) => statSync(f).mtimeMs));
+  return existsSync(stamp) && statSync(stamp).mtimeMs >= newest;
+}
+
+function build() {
   const startedAt = new Date();
   rmSync(join(root, "dist"), { recursive: true, force: true });
   const tsc = join(root, "node_modules", "typescript", "bin", "tsc");
@@ -27,12 +32,38 @@ if (!existsSync(stamp) || statSync(stamp).mtimeMs < newest) {
   const built = spawnSync(process.execPath, [tsc, "-p", project, "--noCheck"], {
     stdio: ["ignore", process.stderr, process.stderr],
   });
-  if (built.status !== 0) {
-    console.error("The build failed; see the messages above. Has `npm ci` been run?");
-    process.exit(1);
-  }
+  if (built.status !== 0) throw new Error("The build failed; see the messages above. Has `npm ci` been run?");
   writeFileSync(stamp, "");
   utimesSync(stamp, startedAt, startedAt);
+}
+
+/** One build at a time: who comes second waits and takes what the first one made. */
+async function buildWhenNeeded() {
+  if (isFresh()) return;
+  const lock = join(root, "node_modules", ".tauline-build");
+  for (;;) {
+    try {
+      mkdirSync(lock);
+      break;
+    } catch (error) {
+      if (error.code !== "EEXIST") throw error;
+      if (Date.now() - statSync(lock, { throwIfNoEntry: false })?.mtimeMs > 60_000)
+        rmSync(lock, { recursive: true, force: true });
+      await new Promise((resolve) => setTimeout(resolve, 50));
+    }
+  }
+  try {
+    if (!isFresh()) build();
+  } finally {
+    rmSync(lock, { recursive: true, force: true });
+  }
+}
+
+try {
+  await buildWhenNeeded();
+} catch (error) {
+  console.error(error.message);
+  process.exit(1);
 }
 
 const [entry, ...args] = process.argv.slice(2);

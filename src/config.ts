@@ -14,6 +14,8 @@ const schema = z.object({
   LEAP_SECONDS_FILE: z.string().min(1, "the path of a leap-second list").optional(),
 });
 
+type Environment = Readonly<Record<string, string | undefined>>;
+
 export interface Config {
   readonly port: number;
   readonly host: string;
@@ -31,7 +33,7 @@ export const version: string = (
 ).version;
 
 /** Reads the environment. Errors: BadEnvironment, naming each variable, what was found and what would be right. */
-export function readConfig(environment: Readonly<Record<string, string | undefined>>): Config {
+export function readConfig(environment: Environment): Config {
   const given = Object.fromEntries(Object.entries(environment).filter(([, value]) => value !== ""));
   const result = schema.safeParse(given);
   if (!result.success) {
@@ -40,18 +42,20 @@ export function readConfig(environment: Readonly<Record<string, string | undefin
     );
     throw new BadEnvironment(lines.join("\n"));
   }
-  const { PORT = "8080", HOST = "127.0.0.1", LOG_LEVEL = "info", LEAP_SECONDS_FILE } = result.data;
+  const { PORT = "8080", HOST = "127.0.0.1", LOG_LEVEL = "info" } = result.data;
   if (Number(PORT) > 65_535) throw new BadEnvironment(`PORT: found "${PORT}", expected a port number from 0 to 65535`);
   return {
     port: Number(PORT),
     host: HOST,
     logLevel: LOG_LEVEL,
-    leapSeconds: LEAP_SECONDS_FILE === undefined ? defaultLeapSeconds : readLeapSeconds(LEAP_SECONDS_FILE),
+    leapSeconds: readLeapSeconds(environment),
     version,
   };
 }
 
-function readLeapSeconds(file: string): LeapSecondTable {
+/** The leap-second table that the environment asks for, or the shipped one. Errors: BadEnvironment. */
+export function readLeapSeconds({ LEAP_SECONDS_FILE: file }: Environment): LeapSecondTable {
+  if (file === undefined || file === "") return defaultLeapSeconds;
   try {
     return LeapSecondTable.parse(readFileSync(file, "utf8"), file);
   } catch (error) {

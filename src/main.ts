@@ -2,7 +2,7 @@
 import closeWithGrace from "close-with-grace";
 import { createApp, listen } from "./app.ts";
 import { runCommandLine } from "./cli/index.ts";
-import { BadEnvironment, type Config, readConfig } from "./config.ts";
+import { BadEnvironment, type Config, readConfig, readLeapSeconds, version } from "./config.ts";
 import { displayDate } from "./time/index.ts";
 
 /** Longest time that work in hand may take after a signal, ms. */
@@ -24,10 +24,10 @@ async function serve(config: Config): Promise<void> {
 }
 
 try {
-  const config = readConfig(process.env);
   process.exitCode = await runCommandLine(process.argv.slice(2), {
-    config,
-    serve: () => serve(config),
+    version,
+    leapSeconds: () => readLeapSeconds(process.env),
+    serve: () => serve(readConfig(process.env)),
     input: process.stdin,
     output: process.stdout,
     messages: process.stderr,

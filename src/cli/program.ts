@@ -15,7 +15,9 @@ import {
 } from "./work.ts";
 
 export interface CommandLineParts {
-  readonly config: { readonly leapSeconds: LeapSecondTable; readonly version: string };
+  readonly version: string;
+  /** Asked for when there is work; may fail for a bad environment. */
+  readonly leapSeconds: () => LeapSecondTable;
   readonly serve: () => Promise<void>;
   readonly input: Readable & { isTTY?: boolean };
   readonly output: Writable;
@@ -24,8 +26,9 @@ export interface CommandLineParts {
 
 /** Runs one command. Gives the exit code: 0 all good, 1 wrong use or bad input. */
 export async function runCommandLine(args: readonly string[], parts: CommandLineParts): Promise<number> {
-  const { config, input, output, messages } = parts;
-  const surroundings: Surroundings = { bench: plainBench(config.leapSeconds, config.version), input, output, messages };
+  const { input, output, messages } = parts;
+  const bench = () => plainBench(parts.leapSeconds(), parts.version);
+  const surroundings: Surroundings = { bench, input, output, messages };
   const program = buildProgram(parts, surroundings);
   try {
     await program.parseAsync([...args], { from: "user" });
@@ -56,10 +59,10 @@ function problemText(problem: Problem): string {
   return `${lines.join("\n")}\n`;
 }
 
-function buildProgram({ config, serve, output, messages }: CommandLineParts, surroundings: Surroundings): Command {
+function buildProgram({ version, serve, output, messages }: CommandLineParts, surroundings: Surroundings): Command {
   const program = new Command("tauline")
     .description("Corrected, traceable time stamps for spacecraft clocks, term by term.")
-    .version(config.version, "--version")
+    .version(version, "--version")
     .addHelpText(
       "after",
       `\nEnvironment: PORT, HOST, LOG_LEVEL, LEAP_SECONDS_FILE (see README).\n\nCaution: ${caution}`,
@@ -79,14 +82,14 @@ function buildProgram({ config, serve, output, messages }: CommandLineParts, sur
     )
     .action(async (file: string | undefined, options: WorkOptions) => {
       const body = await assembleRequest(file, options, surroundings, readingItems);
-      const answer = corrections(body, surroundings.bench);
+      const answer = corrections(body, surroundings.bench());
       await deliver(options.json ? `${JSON.stringify(answer)}\n` : correctionReport(answer), options, surroundings);
     });
   workCommand(program, "predict", "tell what the counter will show at instants (one a line)")
     .option("--value <instant...>", "instants to predict for instead of a file")
     .action(async (file: string | undefined, options: WorkOptions) => {
       const body = await assembleRequest(file, options, surroundings, instantItems);
-      const answer = predictedReadings(body, surroundings.bench);
+      const answer = predictedReadings(body, surroundings.bench());
       await deliver(options.json ? `${JSON.stringify(answer)}\n` : predictionReport(answer), options, surroundings);
     });
   return program;

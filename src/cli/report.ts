@@ -1,42 +1,14 @@
-import Table from "cli-table3";
 import type { CorrectionResponse, PredictionResponse } from "../wire/index.ts";
 
 type State = Pick<CorrectionResponse["results"][number], "clockMinusTtNs" | "terms" | "uncertaintyNs" | "flags">;
 type Remarks = Pick<CorrectionResponse, "notices" | "evidence">;
 
-/** A table without lines: columns parted by two spaces, numbers to the right. */
+/** A table without lines: columns parted by two spaces, numbers to the right, the columns of `left` to the left. */
 function table(head: readonly string[], left: readonly number[], rows: readonly (readonly string[])[]): string {
-  const none = {
-    top: "",
-    "top-mid": "",
-    "top-left": "",
-    "top-right": "",
-    bottom: "",
-    "bottom-mid": "",
-    "bottom-left": "",
-  };
-  const inner = {
-    "bottom-right": "",
-    left: "",
-    "left-mid": "",
-    mid: "",
-    "mid-mid": "",
-    right: "",
-    "right-mid": "",
-    middle: "  ",
-  };
-  const out = new Table({
-    head: [...head],
-    chars: { ...none, ...inner },
-    style: { head: [], border: [], "padding-left": 0, "padding-right": 0 },
-    colAligns: head.map((_, i) => (left.includes(i) ? "left" : "right")),
-  });
-  out.push(...rows.map((row) => [...row]));
-  return out
-    .toString()
-    .split("\n")
-    .map((line) => `  ${line.trimEnd()}`)
-    .join("\n");
+  const widths = head.map((title, i) => rows.reduce((most, row) => Math.max(most, row[i]!.length), title.length));
+  const line = (cells: readonly string[]): string =>
+    `  ${cells.map((cell, i) => (left.includes(i) ? cell.padEnd(widths[i]!) : cell.padStart(widths[i]!))).join("  ")}`;
+  return [head, ...rows].map((cells) => line(cells).trimEnd()).join("\n");
 }
 
 /** Nanoseconds, grouped: three decimals, or below one all six there are (a term is whole femtoseconds). */

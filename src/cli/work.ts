@@ -5,7 +5,7 @@ import { type Bench, parseJson } from "../wire/index.ts";
 
 /** What a command line works with; nothing of the process is reached for elsewhere. */
 export interface Surroundings {
-  readonly bench: Bench;
+  readonly bench: () => Bench;
   readonly input: Readable & { isTTY?: boolean };
   readonly output: Writable;
   readonly messages: Writable;
@@ -77,14 +77,10 @@ export async function assembleRequest(
   items: (lines: readonly string[], near: string | undefined) => object,
 ): Promise<unknown> {
   if (options.request !== undefined) {
-    if (
-      options.clock !== undefined ||
-      options.trajectory !== undefined ||
-      file !== undefined ||
-      options.value !== undefined
-    ) {
-      throw new WrongUse("--request brings everything with it; leave out --clock, --trajectory, --value and the file");
-    }
+    const others = ["clock", "trajectory", "value", "near", "scale", "unwrap", "terms"] as const;
+    const given = others.filter((name) => options[name] !== undefined).map((name) => `--${name}`);
+    if (file !== undefined) given.push("the file");
+    if (given.length > 0) throw new WrongUse(`--request brings everything with it; leave out ${given.join(", ")}`);
     return options.request === "-"
       ? parseJson(await readAll(surroundings.input))
       : readJsonFile(options.request, "the request");

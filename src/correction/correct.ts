@@ -154,10 +154,10 @@ function turnsByRule(setting: Setting, difference: bigint, modulus: bigint, unwr
   if (unwrap === "after") return difference >= 0n ? 0n : 1n; // |difference| < modulus
   if (unwrap === "before") return difference <= 0n ? 0n : -1n;
   const inside = candidates(setting, difference, modulus);
-  if (inside.length === 1) return inside[0]!.turns;
-  const named = inside.length > 1 ? inside : [];
-  if (named.length === 0) return 0n; // not inside at all: the span test says so
-  const times = named.map(({ elapsed }) => whenInWords(setting, elapsed).replace(/^at /, ""));
+  const first = inside[0];
+  if (first === undefined) return 0n; // not inside at all: the span test says so
+  if (inside.length === 1) return first.turns;
+  const times = inside.map(({ elapsed }) => whenInWords(setting, elapsed).replace(/^at /, ""));
   throw new Problem(
     "ambiguous-rollover",
     `The reading could mean ${times[0]} or ${times[1]}: both lie inside the trajectory's span.`,
@@ -172,17 +172,18 @@ function turnsByRule(setting: Setting, difference: bigint, modulus: bigint, unwr
 }
 
 /**
- * The rollovers, from the nearest outwards, for which the reading falls into the span: at most two are looked for. The
- * span's ends are met to a second, with the oscillator and without relativity, so that a question costs no propagation.
+ * The rollovers for which the reading falls into the span, first ones about the anchor. The span holds the anchor, so
+ * whatever is inside on one side of it is inside from the anchor outwards: three on either side are enough to find two
+ * (one to spare for a clock that is off at the anchor). The span's ends are met without relativity, to a microsecond, so
+ * that the question costs no propagation.
  */
 function candidates(setting: Setting, difference: bigint, modulus: bigint): { turns: bigint; elapsed: Duration }[] {
   const rate = setting.clock.counter.ticksPerSecond;
   const out: { turns: bigint; elapsed: Duration }[] = [];
-  const nearest = roundedQuotient(-difference, modulus);
-  for (const turns of [nearest, nearest + 1n, nearest - 1n]) {
-    const indicated = ticksToDuration(difference + turns * modulus, rate);
-    if (Math.abs(indicated.seconds) > 1e11) continue;
-    const elapsed = withoutRelativity(setting, indicated);
+  const firstAfter = difference >= 0n ? 0n : 1n; // |difference| < modulus
+  for (const step of [0n, -1n, 1n, -2n, 2n, -3n]) {
+    const turns = firstAfter + step;
+    const elapsed = withoutRelativity(setting, ticksToDuration(difference + turns * modulus, rate));
     if (isInside(setting, addDuration(setting.clock.anchor.at, elapsed))) out.push({ turns, elapsed });
   }
   return out;

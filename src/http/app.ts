@@ -24,6 +24,8 @@ export function createHttpApp({ bench, logger, isStopping }: HttpParts): Express
   const app = express();
   app.disable("x-powered-by");
   app.set("etag", false);
+  app.enable("strict routing");
+  app.enable("case sensitive routing");
   app.use(
     pinoHttp({
       logger,
@@ -70,18 +72,19 @@ export function createHttpApp({ bench, logger, isStopping }: HttpParts): Express
     response.json(document);
   });
 
-  const readText = express.text({ type: () => true, limit: mostBytes, defaultCharset: "utf-8" });
+  const readBytes = express.raw({ type: () => true, limit: mostBytes });
   for (const call of calls) {
     app.post(
       call.path,
       (request, response, next) => {
         requireRunning(isStopping, response);
         requireJson(request);
-        readText(request, response, next);
+        readBytes(request, response, next);
       },
       (request: Request, response: Response) => {
-        const body: unknown = request.body;
-        const answer = call.answer(parseJson(typeof body === "string" ? body : ""), bench);
+        const answer = call.answer(parseJson(decode(request.body)), bench);
+        // A connection that outlives its answer would hold up the end of the service.
+        if (isStopping()) response.setHeader("Connection", "close");
         response.type("application/json").send(JSON.stringify(answer));
       },
     );
@@ -114,6 +117,16 @@ export function createHttpApp({ bench, logger, isStopping }: HttpParts): Express
       .send(JSON.stringify(problemDetails(problem, String(request.id))));
   });
   return app;
+}
+
+/** The bytes of a body as text. Errors: invalid-json when they are not UTF-8. */
+function decode(body: unknown): string {
+  if (!Buffer.isBuffer(body)) return "";
+  try {
+    return new TextDecoder("utf-8", { fatal: true }).decode(body);
+  } catch {
+    throw new Problem("invalid-json", "The body is not UTF-8.", [{ place: [], expected: "JSON in UTF-8" }]);
+  }
 }
 
 function requireRunning(isStopping: () => boolean, response: Response): void {

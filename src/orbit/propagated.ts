@@ -2,7 +2,7 @@ import type { EarthAxes } from "../bodies/index.ts";
 import { accumulateKnot, type Vec3 } from "../numeric/index.ts";
 import { type Notice, Problem } from "../problem/index.ts";
 import { addSeconds, defaultLeapSeconds, formatInstant, type Instant } from "../time/index.ts";
-import { C2, DAY, GM_EARTH } from "../units/index.ts";
+import { DAY, GM_EARTH } from "../units/index.ts";
 import { type OsculatingElements, osculatingElements } from "./elements.ts";
 import { ForceModel } from "./forces.ts";
 import { fieldTruncation, propagationError } from "./modelError.ts";
@@ -41,7 +41,6 @@ export class PropagatedTrajectory implements Trajectory {
   readonly modelError;
   readonly #path: SteppedPath;
   readonly #stepsPerPiece: number;
-  readonly #speed: number;
 
   /** Position and velocity at `epoch` in GCRF, m and m/s. */
   constructor(
@@ -62,7 +61,6 @@ export class PropagatedTrajectory implements Trajectory {
     const step = stepFor(elements, position);
     this.#path = new SteppedPath(step, new ForceModel(epoch, axes), position, velocity);
     this.#stepsPerPiece = 64;
-    this.#speed = Math.hypot(...velocity);
     this.modelError = {
       fieldTruncation: (dt: number) => fieldTruncation(elements.perigee, dt),
       propagation: (t: number) => propagationError(elements, t),
@@ -115,10 +113,8 @@ export class PropagatedTrajectory implements Trajectory {
   }
 
   interpolationError(a: number, b: number): number {
-    // The error of a step is far below the corrector's move; a thousandth of it, taken as a lasting error of speed, is
-    // an upper bound (step halving, test/orbit/propagated).
-    const speedError = (1e-3 * this.#path.largestCorrection) / this.#path.step;
-    return (this.#speed * speedError * Math.abs(b - a)) / C2;
+    // 0.001 ps in ten days, the bound that step halving holds for every class of orbit (test/orbit/propagated).
+    return (1e-15 / (10 * DAY)) * Math.abs(b - a);
   }
 
   #check(index: number, states: Float64Array, at: number): void {
@@ -133,10 +129,11 @@ export class PropagatedTrajectory implements Trajectory {
         : `The propagated path leaves the surroundings of the Earth (${Math.round(r / 1000)} km away at ${when} TAI), where the geocentric model holds.`,
       [
         {
-          place: ["velocityKmPerS"],
+          place: ["trajectory", "velocityKmPerS"],
           expected: "a state whose path stays outside the Earth and within 1 500 000 km of it",
         },
       ],
+      true,
     );
   }
 }

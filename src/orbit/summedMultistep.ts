@@ -64,8 +64,6 @@ class Branch {
   readonly #trial = new Float64Array(3);
   states: Float64Array;
   count: number;
-  /** Largest difference between predicted and corrected position so far, m. */
-  largestCorrection = 0;
 
   constructor(h: number, force: ForceModel, start: Float64Array) {
     this.#h = h;
@@ -110,13 +108,9 @@ class Branch {
     const slot = 3 * this.#newest;
     const accelerations = this.#accelerations;
     this.#force.acceleration(this.#moment, trial[0]!, trial[1]!, trial[2]!, accelerations, slot);
-    let correction = 0;
     for (let d = 0; d < 3; d++) {
-      const corrected = h2 * (this.#sum2[d]! + (this.#sum2[d + 3]! + this.#weighted(positionWeights, d)));
-      correction = Math.max(correction, Math.abs(corrected - trial[d]!));
-      trial[d] = corrected;
+      trial[d] = h2 * (this.#sum2[d]! + (this.#sum2[d + 3]! + this.#weighted(positionWeights, d)));
     }
-    this.largestCorrection = Math.max(this.largestCorrection, correction);
     this.#force.acceleration(this.#moment, trial[0]!, trial[1]!, trial[2]!, accelerations, slot);
     if (6 * (n + 1) > this.states.length) {
       const grown = new Float64Array(2 * this.states.length);
@@ -224,9 +218,5 @@ export class SteppedPath {
   /** The array that holds a step and the place of its first element. */
   statesOf(index: number): Float64Array {
     return index >= 0 ? this.#forward.states : this.#backward.states;
-  }
-
-  get largestCorrection(): number {
-    return Math.max(this.#forward.largestCorrection, this.#backward.largestCorrection);
   }
 }

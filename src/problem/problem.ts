@@ -18,12 +18,15 @@ export const mostFaults = 100;
 export class Problem extends Error {
   readonly code: ProblemCode;
   readonly faults: readonly Fault[];
+  /** True when the places are counted from the whole request, whoever works on a part of it. */
+  readonly fromTheTop: boolean;
 
-  constructor(code: ProblemCode, detail: string, faults: readonly Fault[] = []) {
+  constructor(code: ProblemCode, detail: string, faults: readonly Fault[] = [], fromTheTop = false) {
     super(detail);
     this.name = "Problem";
     this.code = code;
     this.faults = faults;
+    this.fromTheTop = fromTheTop;
   }
 
   get status(): number {
@@ -32,6 +35,7 @@ export class Problem extends Error {
 
   /** The same problem seen from further outside: every place gets the prefix. */
   within(...prefix: (string | number)[]): Problem {
+    if (this.fromTheTop) return this;
     const faults = this.faults.map((fault) => ({ ...fault, place: [...prefix, ...fault.place] }));
     return new Problem(this.code, this.message, faults);
   }
@@ -58,7 +62,7 @@ export function forEachItem<T, R>(place: Place, items: readonly T[], work: (item
     try {
       results.push(work(item, index));
     } catch (error) {
-      if (!(error instanceof Problem)) throw error;
+      if (!(error instanceof Problem) || error.fromTheTop) throw error;
       problems.push(error.within(...place, index));
       faultCount += error.faults.length;
       if (faultCount >= mostFaults) break;

@@ -12,6 +12,8 @@ const points = degree + 1;
 const width = points + 1;
 /** A segment is good when what its last two coefficients leave is below this, s of accumulated time. */
 const tolerance = 1e-17;
+/** No clock is nearer to the Earth's centre than this, m; a propagated state ends there too. */
+const innermost = 990e3;
 
 /** A stretch on which every integrated term is one series. */
 interface Segment {
@@ -57,7 +59,7 @@ export class ProperTime {
     this.terms = terms;
     this.#integrated = terms.map((term, index) => ({ term, index })).filter(({ term }) => !term.constant);
     this.#reader = new EnvironmentReader(trajectory, new Set(terms.flatMap((term): readonly Need[] => term.needs)));
-    this.#origin = trajectory.pieceOf(origin);
+    this.#origin = this.#pieceOf(origin);
     this.#first = this.#origin;
     this.#last = this.#origin - 1;
     this.#samples = this.#integrated.map(() => new Float64Array(points));
@@ -86,7 +88,7 @@ export class ProperTime {
   #accumulated(t: number): Float64Array {
     const { trajectory } = this;
     invariant(t >= trajectory.from && t <= trajectory.to, "accumulated time is asked for inside the span only");
-    const index = trajectory.pieceOf(t);
+    const index = this.#pieceOf(t);
     this.#buildTo(index);
     const piece = this.#pieces.get(index)!;
     let low = 0;
@@ -103,6 +105,12 @@ export class ProperTime {
       out[k] = piece.before[low]![k]! + evaluateSeries(segment.series, x, k * width, width);
     }
     return out;
+  }
+
+  /** The piece that holds t; the very end of a trajectory belongs to the piece before it, when none begins there. */
+  #pieceOf(t: number): number {
+    const index = this.trajectory.pieceOf(t);
+    return this.trajectory.pieceStart(index) >= this.trajectory.to ? index - 1 : index;
   }
 
   #buildTo(index: number): void {
@@ -144,11 +152,8 @@ export class ProperTime {
     for (let p = 0; p < points; p++) {
       // At the very ends of a stretch the points stay inside it.
       const environment = this.#reader.read(a + halfLength * (1 + basis.points[p]!));
-      if (!(environment.speedSquared < C2)) {
-        throw new Problem("impossible-table", "Between its states the path would reach the speed of light.", [
-          { place: [], expected: "states that are closer together, or consistent velocities" },
-        ]);
-      }
+      if (!(environment.speedSquared < C2)) throw impossiblePath("the path would reach the speed of light");
+      if (!(environment.distance > innermost)) throw impossiblePath("the path would pass through the Earth");
       for (let k = 0; k < count; k++) this.#samples[k]![p] = this.#integrated[k]!.term.rate(environment);
     }
     const series = new Float64Array(this.#integrated.length * width);
@@ -167,4 +172,11 @@ export class ProperTime {
 
 function combine(a: Float64Array, b: Float64Array, sign: 1 | -1): Float64Array {
   return a.map((value, k) => value + sign * b[k]!);
+}
+
+/** A table can be good at each of its states and impossible between them. */
+function impossiblePath(what: string): Problem {
+  const expected = "states that are closer together, or velocities that fit the positions";
+  const place = ["trajectory", "states"];
+  return new Problem("impossible-table", `Between the given states ${what}.`, [{ place, expected }], true);
 }

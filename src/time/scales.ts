@@ -35,7 +35,7 @@ function whyNotAnInstant(text: string, scale: Scale): string {
     return "UTC, ending in Z, instead of a local time with an offset";
   if (/^\d{4}-\d{2}-\d{2} /.test(text)) return 'the letter "T" between date and time';
   if (/T\d{2}:\d{2}Z?$/.test(text)) return "seconds as well, for example T12:00:00Z";
-  if (/,/.test(text)) return "a decimal point, not a comma";
+  if (/\d,\d/.test(text)) return "a decimal point, not a comma";
   if (/[tz]/.test(text) && shape.test(text.toUpperCase())) return 'capital letters "T" and "Z"';
   return scale === "UTC"
     ? "ISO 8601 with up to 12 decimals and Z, for example 2026-03-01T00:00:00.5Z or 2026-060T00:00:00Z"

@@ -4,13 +4,16 @@ import { z } from "./zod.ts";
 const counterSchema = z
   .strictObject({
     ticksPerSecond: z
-      .union([
-        z.number().gt(0),
-        z
-          .string()
-          .max(120)
-          .regex(/^\d+\/\d+$/, 'a fraction of whole numbers such as "10230000/3"'),
-      ])
+      .union(
+        [
+          z.number().gt(0),
+          z
+            .string()
+            .max(120)
+            .regex(/^\d+\/\d+$/, 'a fraction of whole numbers such as "10230000/3"'),
+        ],
+        'a positive number, or a fraction of whole numbers such as "10230000/3"',
+      )
       .openapi({
         description: 'Nominal rate: a number, taken as its shortest decimal exactly, or "num/den".',
         example: 32768,
@@ -30,7 +33,7 @@ const counterSchema = z
 
 const oscillatorSchema = z
   .strictObject({
-    offsetNs: number.optional(),
+    offsetNs: number.min(-1e18).max(1e18).optional(),
     presetFractional: number
       .gt(-0.01)
       .lt(0.01)
@@ -42,15 +45,15 @@ const oscillatorSchema = z
       .optional()
       .openapi({ description: "What is left of the fractional frequency." }),
     agingPerDay: number
-      .gt(-0.01)
-      .lt(0.01)
+      .gt(-1e-5)
+      .lt(1e-5)
       .optional()
       .openapi({ description: "Change of the fractional frequency per day." }),
     nominalHz: number.gt(0).optional(),
-    frequencySigma: sigma.optional(),
-    agingSigmaPerDay: sigma.optional(),
+    frequencySigma: sigma.max(1).optional(),
+    agingSigmaPerDay: sigma.max(1).optional(),
     covariance: z
-      .array(z.array(number).min(3).max(3))
+      .array(z.array(number.min(-1e24).max(1e24)).min(3).max(3))
       .min(3)
       .max(3)
       .optional()

@@ -69,33 +69,62 @@ function readOscillator(given: NonNullable<CorrectionRequest["clock"]["oscillato
   };
 }
 
-/** Errors: impossible-clock or impossible-state when a matrix is not symmetric or has a negative variance. */
+/**
+ * Errors: `code` with the place when a matrix is not symmetric, has a negative variance or a correlation beyond one, or is
+ * not positive semidefinite as a whole.
+ */
 function requireCovariance(
   matrix: readonly (readonly number[])[],
   field: string,
   code: "impossible-clock" | "impossible-state" = "impossible-clock",
 ): void {
+  const fault = (detail: string, place: (string | number)[], expected: string, received?: number) =>
+    new Problem(code, detail, [{ place: [field, ...place], received, expected }]);
   for (const [i, row] of matrix.entries()) {
     if (row[i]! < 0) {
-      throw new Problem(code, `The covariance has a negative variance in row ${i + 1}.`, [
-        { place: [field, i, i], received: row[i], expected: "a variance of zero or more" },
-      ]);
+      throw fault(
+        `The covariance has a negative variance in row ${i + 1}.`,
+        [i, i],
+        "a variance of zero or more",
+        row[i],
+      );
     }
     for (const [j, value] of row.entries()) {
       const other = matrix[j]![i]!;
-      const most = Math.sqrt(Math.max(0, row[i]!) * Math.max(0, matrix[j]![j]!));
+      const where = `in row ${i + 1}, column ${j + 1}`;
       if (Math.abs(value - other) > 1e-9 * Math.max(Math.abs(value), Math.abs(other))) {
-        throw new Problem(code, `The covariance is not symmetric in row ${i + 1}, column ${j + 1}.`, [
-          { place: [field, i, j], received: value, expected: `${other}, as on the other side of the diagonal` },
-        ]);
+        const expected = `${other}, as on the other side of the diagonal`;
+        throw fault(`The covariance is not symmetric ${where}.`, [i, j], expected, value);
       }
+      const most = Math.sqrt(Math.max(0, row[i]!) * Math.max(0, matrix[j]![j]!));
       if (Math.abs(value) > most * (1 + 1e-9)) {
-        throw new Problem(code, `The covariance gives a correlation beyond 1 in row ${i + 1}, column ${j + 1}.`, [
-          { place: [field, i, j], received: value, expected: `at most ${most} in size` },
-        ]);
+        throw fault(`The covariance gives a correlation beyond 1 ${where}.`, [i, j], `at most ${most} in size`, value);
       }
     }
   }
+  if (!isPositive(matrix)) {
+    const expected = "a positive semidefinite matrix: no combination may have a negative variance";
+    throw fault("The covariance is not possible as a whole, though each pair of it is.", [], expected);
+  }
+}
+
+/** Cholesky's elimination on the correlations, with a grain of rounding allowed. */
+function isPositive(matrix: readonly (readonly number[])[]): boolean {
+  const sigmas = matrix.map((row, i) => Math.sqrt(row[i]!) || 1);
+  const left = matrix.map((row, i) => row.map((value, j) => value / (sigmas[i]! * sigmas[j]!)));
+  for (let k = 0; k < left.length; k++) {
+    const pivot = left[k]![k]!;
+    if (pivot < -1e-9) return false;
+    for (let i = k + 1; i < left.length; i++) {
+      if (pivot <= 1e-12) {
+        if (Math.abs(left[i]![k]!) > 1e-5) return false;
+        continue;
+      }
+      const factor = left[i]![k]! / pivot;
+      for (let j = k + 1; j < left.length; j++) left[i]![j]! -= factor * left[k]![j]!;
+    }
+  }
+  return true;
 }
 
 function readTrajectory(given: CorrectionRequest["trajectory"], leapSeconds: LeapSecondTable): TrajectoryDescription {

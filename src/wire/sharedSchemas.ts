@@ -4,14 +4,22 @@ import { z } from "./zod.ts";
 /** Shapes that several calls share. Plain: no transforms, so the interface document can be made from them. */
 
 export const number = z.number();
-export const sigma = z.number().min(0);
+/** Any component of a place or a velocity; far beyond what makes sense, near enough to compute with. */
+const component = z.number().min(-1e12).max(1e12);
+/** A standard uncertainty in a request. */
+export const sigma = z.number().min(0).max(1e12);
+/** A standard uncertainty in an answer. */
+export const magnitude = z.number().min(0);
 
 export const scaleSchema = z.enum(scales).openapi("Scale", {
   description: "Time scale. UTC has leap seconds; TAI, TT and GPS run evenly beside it.",
 });
 
 export const instantSchema = z
-  .union([z.string().max(60), z.strictObject({ at: z.string().max(60), scale: scaleSchema })])
+  .union(
+    [z.string().max(60), z.strictObject({ at: z.string().max(60), scale: scaleSchema })],
+    'an instant: ISO 8601 text that ends in Z, or { "at": ..., "scale": ... }',
+  )
   .openapi("InstantIn", {
     description:
       "ISO 8601 with up to 12 decimals. A string is UTC and ends in Z (calendar date or day of year, 23:59:60 where there was a leap second). Any other scale: an object; there only UTC ends in Z.",
@@ -19,13 +27,16 @@ export const instantSchema = z
   });
 
 export const counterValueSchema = z
-  .union([
-    z.int(),
-    z
-      .string()
-      .max(120)
-      .regex(/^-?\d+$/, "decimal digits, with - in front when negative"),
-  ])
+  .union(
+    [
+      z.int().openapi({ minimum: Number.MIN_SAFE_INTEGER, maximum: Number.MAX_SAFE_INTEGER }),
+      z
+        .string()
+        .max(120)
+        .regex(/^-?\d+$/, "decimal digits, with - in front when negative"),
+    ],
+    "a whole number up to 2^53 - 1, or a decimal string of any size",
+  )
   .openapi("CounterValue", {
     description:
       "A JSON integer up to 2^53 - 1, or a decimal string of any size (to 120 digits). Negative only without widthBits.",
@@ -33,7 +44,7 @@ export const counterValueSchema = z
   });
 
 export const vectorSchema = z
-  .tuple([number, number, number])
+  .tuple([component, component, component])
   .openapi({ minItems: 3, maxItems: 3, description: "x, y, z" });
 
 export const termValueSchema = z
@@ -55,7 +66,7 @@ export const uncertaintyItemSchema = z
   .strictObject({
     source: z.string(),
     type: z.enum(["A", "B"]),
-    ns: sigma.openapi({ description: "One standard uncertainty (k = 1), nanoseconds." }),
+    ns: magnitude.openapi({ description: "One standard uncertainty (k = 1), nanoseconds." }),
     shared: z.enum(["row", "pass", "log"]).openapi({
       description: "With what the error is common: this row only, the neighbouring rows, the whole log.",
     }),

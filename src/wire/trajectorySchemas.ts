@@ -17,11 +17,11 @@ const stateVectorSchema = z
     epoch: instantSchema,
     positionKm: vectorSchema,
     velocityKmPerS: vectorSchema,
-    positionSigmaKm: sigma.optional(),
-    velocitySigmaKmPerS: sigma.optional(),
-    semiMajorAxisSigmaKm: sigma.optional(),
+    positionSigmaKm: sigma.max(1e6).optional(),
+    velocitySigmaKmPerS: sigma.max(1e6).optional(),
+    semiMajorAxisSigmaKm: sigma.max(1e9).optional(),
     covarianceRtn: z
-      .array(z.array(number).min(6).max(6))
+      .array(z.array(number.min(-1e12).max(1e12)).min(6).max(6))
       .min(6)
       .max(6)
       .optional()

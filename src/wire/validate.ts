@@ -24,17 +24,33 @@ function faultsOf(issue: Issue, root: unknown): Fault[] {
   const place = issue.path as (string | number)[];
   const found = valueAt(root, place);
   const received = typeof found === "object" && found !== null ? undefined : found;
+  // Of a union only one branch may be of the right kind: then what is wrong inside it is what helps.
+  if (issue.code === "invalid_union" && issue.discriminator === undefined) {
+    const inside = issue.errors.filter((branch) =>
+      branch.every((inner) => inner.path.length > 0 || inner.code === "unrecognized_keys"),
+    );
+    if (inside.length === 1 && typeof found === "object" && found !== null) {
+      return inside[0]!.flatMap((inner) => faultsOf({ ...inner, path: [...place, ...inner.path] } as Issue, root));
+    }
+  }
   if (issue.code === "unrecognized_keys") {
     return issue.keys.map((key) => ({ place: [...place, key], expected: "no such field; see the documented shape" }));
   }
   const fault = { place, expected: expectation(issue, found) };
-  return [received === undefined ? fault : { ...fault, received }];
+  if (received === undefined) return [fault];
+  return [
+    {
+      ...fault,
+      received: typeof received === "number" && !Number.isFinite(received) ? "beyond the range of a double" : received,
+    },
+  ];
 }
 
 function expectation(issue: Issue, found: unknown): string {
   const missing = found === undefined ? " (it is missing)" : "";
   switch (issue.code) {
     case "invalid_type":
+      if (typeof found === "number" && !Number.isFinite(found)) return "a finite number, at most about 1.8e308 in size";
       if (issue.expected === "int") return "a whole number from -(2^53 - 1) to 2^53 - 1";
       return `${article(issue.expected)}${missing}`;
     case "too_small":
@@ -59,9 +75,11 @@ function unionExpectation(issue: Extract<Issue, { code: "invalid_union" }>, foun
     const options = (issue as unknown as { options?: unknown[] }).options;
     return options ? `one of ${options.map((o) => JSON.stringify(o)).join(", ")}` : "one of the documented kinds";
   }
-  if (typeof found === "number" && !Number.isSafeInteger(found) && Number.isInteger(found)) {
+  if (Number.isInteger(found) && !Number.isSafeInteger(found)) {
     return "a whole number up to 2^53 - 1; larger ones as a decimal string, or digits are lost";
   }
+  // Unions of the schemas bring their own words.
+  if (issue.message !== "Invalid input") return `${issue.message}${missing}`;
   const branches = issue.errors.map((branch) =>
     branch
       .map(
@@ -92,33 +110,42 @@ function valueAt(root: unknown, place: readonly (string | number)[]): unknown {
 }
 
 /**
- * Reads a JSON text. Errors: invalid-json, saying where it breaks off or that it is nested too deep.
+ * Reads a JSON text. Errors: invalid-json, saying where it breaks off or that it is nested too deep; invalid-request for
+ * text that is no Unicode.
  */
 export function parseJson(text: string): unknown {
   let value: unknown;
   try {
     value = JSON.parse(text);
   } catch (error) {
-    const reason = (error as Error).message.replace(/^.*?JSON/, "the JSON").slice(0, 200);
-    throw new Problem(
-      "invalid-json",
-      `The body cannot be read as JSON: ${(error as Error).message.slice(0, 200) || reason}.`,
-      [{ place: [], expected: "one JSON object" }],
-    );
+    throw new Problem("invalid-json", `The body cannot be read as JSON: ${(error as Error).message.slice(0, 200)}.`, [
+      { place: [], expected: "one JSON object" },
+    ]);
   }
-  requireShallow(value, 0, []);
+  requireReadable(value, 0, []);
   return value;
 }
 
-function requireShallow(value: unknown, depth: number, place: readonly (string | number)[]): void {
+function requireReadable(value: unknown, depth: number, place: readonly (string | number)[]): void {
+  if (typeof value === "string") requireWellFormed(value, place);
   if (typeof value !== "object" || value === null) return;
   if (depth >= deepest) {
     throw new Problem("invalid-json", `The body is nested more than ${deepest} deep.`, [
       { place, expected: `nesting of at most ${deepest}` },
     ]);
   }
+  const isArray = Array.isArray(value);
   for (const [key, inner] of Object.entries(value)) {
-    if (typeof inner === "object")
-      requireShallow(inner, depth + 1, [...place, Array.isArray(value) ? Number(key) : key]);
+    if (!isArray) requireWellFormed(key, place);
+    if (typeof inner === "object" || typeof inner === "string") {
+      requireReadable(inner, depth + 1, [...place, isArray ? Number(key) : key]);
+    }
   }
+}
+
+function requireWellFormed(text: string, place: readonly (string | number)[]): void {
+  if (!/\p{Surrogate}/u.test(text)) return;
+  throw new Problem("invalid-request", "A text holds half of a surrogate pair, which is no Unicode character.", [
+    { place, expected: "well-formed Unicode" },
+  ]);
 }

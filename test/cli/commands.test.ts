@@ -71,7 +71,8 @@ async function run(args: readonly string[], input: string | null = null): Promis
   const [output, messages] = [new Sink(), new Sink()];
   let served = 0;
   const code = await runCommandLine(args, {
-    config: { leapSeconds: defaultLeapSeconds, version },
+    version,
+    leapSeconds: () => defaultLeapSeconds,
     serve: async () => {
       served++;
     },
@@ -417,7 +418,8 @@ describe("an output that is closed early", () => {
     });
     const messages = new Sink();
     const code = await runCommandLine(["correct", ...on("mountain.json"), "--value", "1"], {
-      config: { leapSeconds: defaultLeapSeconds, version },
+      version,
+      leapSeconds: () => defaultLeapSeconds,
       serve: async () => {},
       input: Readable.from([]),
       output: broken,

@@ -2,7 +2,7 @@ import { type ChildProcess, spawn } from "node:child_process";
 import { fileURLToPath } from "node:url";
 
 /** The top folder of the checkout. */
-export const root = fileURLToPath(new URL("../..", import.meta.url));
+const root = fileURLToPath(new URL("../..", import.meta.url));
 
 /** A real process with what it has said so far. */
 export interface Running {
