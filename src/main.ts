@@ -12,10 +12,10 @@ async function serve(config: Config): Promise<void> {
   const app = createApp(config);
   const { server, address } = await listen(app, config.host, config.port);
   closeWithGrace({ delay: graceMs, logger: app.logger }, async ({ err, signal }) => {
-    app.logger.info({ signal, err }, "stopping");
     app.stop();
     const closed = new Promise<void>((resolve) => server.close(() => resolve()));
     server.closeIdleConnections();
+    app.logger.info({ signal, err }, "stopping: no new connections; work in hand is finished");
     await closed;
   });
   const { leapSeconds } = config;

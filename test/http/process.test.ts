@@ -160,7 +160,7 @@ describe("SIGTERM", () => {
     await wire.heard(/^HTTP\/1\.1 100 /);
     wire.send(body.slice(0, 50));
     process.child.kill("SIGTERM");
-    await process.said("messages", /"stopping"/);
+    await process.said("messages", /stopping: no new connections/);
     expect(await opens("127.0.0.1", Number(new URL(process.address).port))).toBe(false);
     const asked = Date.now();
     wire.send(body.slice(50));
