@@ -72,7 +72,7 @@ const homes = {
   luxon: "^src/time/display\\.ts$",
   "astronomy-engine": "^src/bodies/sunMoon\\.ts$",
   canonicalize: "^src/correction/evidence\\.ts$",
-  commander: "^src/cli/program\\.ts$",
+  commander: "^src/cli/[^/]+\\.ts$",
   "satellite\\.js": "^src/orbit/[^/]+\\.ts$",
 };
 for (const [library, home] of Object.entries(homes)) {

@@ -1,7 +1,16 @@
-import { axisRotation, type Mat3, multiply, multiplyTransposed, product, type Vec3 } from "../numeric/index.ts";
+import {
+  axisRotation,
+  type Mat3,
+  multiply,
+  multiplyTransposed,
+  product,
+  transpose,
+  type Vec3,
+} from "../numeric/index.ts";
 import { type Instant, ttSecondsSinceJ2000 } from "../time/index.ts";
 import { ARCSECOND, constants, DAY, EARTH_ROTATION } from "../units/index.ts";
-import { intermediatePole } from "./precessionNutation.ts";
+import { intermediatePole, nutation2000B, trueOfDate } from "./precessionNutation.ts";
+import { greenwichMeanSiderealTime1982, siderealRate1982 } from "./siderealTime1982.ts";
 
 /** How the Earth is turned, as far as a user knows it. */
 export interface EarthOrientation {
@@ -35,11 +44,13 @@ export function earthRotationAngle(instant: Instant, ut1MinusTai: number): numbe
 export class EarthAxes {
   readonly #ttAtReference: number;
   readonly #angleAtReference: number;
+  readonly #siderealAtReference: number;
   readonly #polarMotion: Mat3 | null;
 
   constructor(reference: Instant, orientation: EarthOrientation) {
     this.#ttAtReference = ttSecondsSinceJ2000(reference);
     this.#angleAtReference = earthRotationAngle(reference, orientation.ut1MinusTai);
+    this.#siderealAtReference = greenwichMeanSiderealTime1982(reference, orientation.ut1MinusTai);
     const { xPole, yPole } = orientation;
     // Eq. 5.3: ITRF = R1(-yp) R2(-xp) R3(s') of the rotated intermediate axes; s' = -47 microarcseconds a century.
     const sPrime = -47e-6 * ARCSECOND * (this.#ttAtReference / (36_525 * DAY));
@@ -51,6 +62,28 @@ export class EarthAxes {
 
   /** Rotation from GCRF to ITRF. */
   rotation(t: number): Mat3 {
+    const rotated = this.#rotationWithoutPole(t);
+    return this.#polarMotion === null ? rotated : product(this.#polarMotion, rotated);
+  }
+
+  /** Rotation from GCRF to the true equator and equinox of date. */
+  trueOfDate(t: number): Mat3 {
+    const centuries = (this.#ttAtReference + t) / (36_525 * DAY);
+    return trueOfDate(centuries, nutation2000B(centuries));
+  }
+
+  /**
+   * Rotation from TEME (true equator, mean equinox: the axes of the mean-element theory) to GCRF: by the sidereal time of
+   * 1982 to the Earth-fixed equator and from there back by the Earth's turn, so that UT1 falls out.
+   * Source: AIAA 2006-6753, appendix C.
+   */
+  fromTeme(t: number): Mat3 {
+    const sidereal = axisRotation(3, this.#siderealAtReference + siderealRate1982 * t);
+    return product(transpose(this.#rotationWithoutPole(t)), sidereal);
+  }
+
+  /** The same as rotation() with the pole at zero. */
+  #rotationWithoutPole(t: number): Mat3 {
     intermediatePole.evaluate(this.#ttAtReference + t, pole);
     const x = pole[0]!;
     const y = pole[1]!;
@@ -62,7 +95,7 @@ export class EarthAxes {
     const q00 = 1 - a * x * x;
     const q01 = -a * x * y;
     const q11 = 1 - a * y * y;
-    const rotated: Mat3 = [
+    return [
       c * q00 + s * q01,
       c * q01 + s * q11,
       -c * x - s * y,
@@ -73,7 +106,6 @@ export class EarthAxes {
       y,
       z,
     ];
-    return this.#polarMotion === null ? rotated : product(this.#polarMotion, rotated);
   }
 
   /**

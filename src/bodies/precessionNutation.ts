@@ -62,7 +62,7 @@ export function nutation2000B(t: number): Nutation {
  * Source: IAU 2006 precession in Fukushima-Williams angles, Capitaine et al. (2003), A&A 412, 567, and IERS Conventions
  * (2010) 5.6.4; the figures of the polynomials from IAU 2006 (Hilton et al. 2006).
  */
-function trueOfDate(t: number, nutation: Nutation): Mat3 {
+export function trueOfDate(t: number, nutation: Nutation): Mat3 {
   const gamma = polynomial(t, -0.052928, 10.556378, 0.4932044, -0.00031238, -0.000002788, 0.000000026) * ARCSECOND;
   const phi = polynomial(t, 84381.412819, -46.811016, 0.0511268, 0.00053289, -0.00000044, -0.0000000176) * ARCSECOND;
   const psi = polynomial(t, -0.041775, 5038.481484, 1.5584175, -0.00018522, -0.000026452, -0.0000000148) * ARCSECOND;

@@ -1,8 +1,10 @@
 import type { Readable, Writable } from "node:stream";
 import { Command, CommanderError, Option } from "commander";
 import { Problem, problemCatalogue } from "../problem/index.ts";
-import type { LeapSecondTable } from "../time/index.ts";
+import { type LeapSecondTable, scales } from "../time/index.ts";
 import { caution, corrections, plainBench, predictedReadings, problemDetails } from "../wire/index.ts";
+import { budgetCommand } from "./budget.ts";
+import { convertCommand } from "./convert.ts";
 import { correctionReport, predictionReport } from "./report.ts";
 import {
   assembleRequest,
@@ -92,6 +94,8 @@ function buildProgram({ version, serve, output, messages }: CommandLineParts, su
       const answer = predictedReadings(body, surroundings.bench());
       await deliver(options.json ? `${JSON.stringify(answer)}\n` : predictionReport(answer), options, surroundings);
     });
+  budgetCommand(program, surroundings);
+  convertCommand(program, surroundings);
   return program;
 }
 
@@ -102,7 +106,7 @@ function workCommand(program: Command, name: string, description: string): Comma
     .option("--clock <file>", "the clock, JSON as in the interface document")
     .option("--trajectory <file>", "the trajectory, JSON as in the interface document")
     .option("--request <file>", 'a whole request as the service takes it; "-": standard input')
-    .option("--scale <scale>", "scale of the answer: UTC, TAI, TT or GPS")
+    .option("--scale <scale>", `scale of the answer: ${scales.join(", ")}`)
     .option("--terms <list>", "physical terms to compute, parted by commas; all when left out")
     .option("--out <file>", "where to write the result instead of standard output")
     .option("--json", "the service's JSON instead of a table");

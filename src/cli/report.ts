@@ -4,7 +4,7 @@ type State = Pick<CorrectionResponse["results"][number], "clockMinusTtNs" | "ter
 type Remarks = Pick<CorrectionResponse, "notices" | "evidence">;
 
 /** A table without lines: columns parted by two spaces, numbers to the right, the columns of `left` to the left. */
-function table(head: readonly string[], left: readonly number[], rows: readonly (readonly string[])[]): string {
+export function table(head: readonly string[], left: readonly number[], rows: readonly (readonly string[])[]): string {
   const widths = head.map((title, i) => rows.reduce((most, row) => Math.max(most, row[i]!.length), title.length));
   const line = (cells: readonly string[]): string =>
     `  ${cells.map((cell, i) => (left.includes(i) ? cell.padEnd(widths[i]!) : cell.padStart(widths[i]!))).join("  ")}`;
@@ -36,7 +36,7 @@ function breakdown(results: readonly State[], headings: readonly string[]): stri
 /** At most so many results stand side by side in a breakdown. */
 const widest = 4;
 
-function remarks({ notices, evidence }: Remarks): string[] {
+export function remarks({ notices, evidence }: Remarks): string[] {
   const lines = notices.map(({ code, text }) => `  notice ${code}: ${text}`);
   lines.push(
     `  evidence: inputs ${evidence.inputsSha256.slice(0, 16)}..., ${evidence.leapSeconds.source.split(",")[0]}, version ${evidence.version}`,
@@ -79,7 +79,7 @@ export function predictionReport(response: PredictionResponse): string {
     result.at,
     String(result.reading),
     result.fraction.toFixed(6),
-    Number(result.sigmaTicks.toPrecision(2)).toString(),
+    result.sigmaTicks === null ? "-" : sigmaText(result.sigmaTicks),
     nanoseconds(result.clockMinusTtNs),
     result.flags.join(" ") || "-",
   ]);

@@ -28,7 +28,7 @@ export interface WorkOptions {
 export class WrongUse extends Error {}
 
 /** Errors: WrongUse (cannot be read), Problem invalid-json naming the file. */
-function readJsonFile(file: string, what: string): unknown {
+export function readJsonFile(file: string, what: string): unknown {
   let text: string;
   try {
     text = readFileSync(file, "utf8");
@@ -49,8 +49,13 @@ async function readAll(input: Readable): Promise<string> {
   return Buffer.concat(chunks).toString("utf8");
 }
 
+/** A JSON request from a file, or from standard input for "-". */
+export async function parseInput(file: string, { input }: Surroundings): Promise<unknown> {
+  return file === "-" ? parseJson(await readAll(input)) : readJsonFile(file, "the request");
+}
+
 /** Lines of a file or of standard input without blanks and comments. */
-async function readLines(file: string | undefined, { input }: Surroundings): Promise<string[]> {
+export async function readLines(file: string | undefined, { input }: Surroundings): Promise<string[]> {
   let text: string;
   if (file === undefined || file === "-") {
     if (input.isTTY) throw new WrongUse("nothing to work on: name a file, pipe lines in, or use --value");
@@ -81,9 +86,7 @@ export async function assembleRequest(
     const given = others.filter((name) => options[name] !== undefined).map((name) => `--${name}`);
     if (file !== undefined) given.push("the file");
     if (given.length > 0) throw new WrongUse(`--request brings everything with it; leave out ${given.join(", ")}`);
-    return options.request === "-"
-      ? parseJson(await readAll(surroundings.input))
-      : readJsonFile(options.request, "the request");
+    return parseInput(options.request, surroundings);
   }
   if (options.clock === undefined || options.trajectory === undefined) {
     throw new WrongUse("--clock FILE and --trajectory FILE are needed (or --request FILE with everything)");

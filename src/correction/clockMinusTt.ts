@@ -37,8 +37,8 @@ export function clockMinusTt(setting: Setting, elapsed: Duration, asRead: boolea
   const relativityRate = rates.reduce((a, b) => a + b, 0);
   const tau = properTime(toTwoPartSeconds(elapsed), relativity);
   const terms: TermValue[] = oscillatorTerms(clock.oscillator, tau, 1 + relativityRate);
-  if (asRead && clock.counter.stands === "truncated") {
-    const accumulated = tickFraction(-1n, 2n, clock.counter.ticksPerSecond);
+  if (asRead && clock.face.kind === "counter" && clock.face.stands === "truncated") {
+    const accumulated = tickFraction(-1n, 2n, clock.face.ticksPerSecond);
     terms.push({ term: "latch", label: "Half a tick cut off by the latch", rate: 0, accumulated });
   }
   for (const [k, { term, label }] of integral.terms.entries()) {

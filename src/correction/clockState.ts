@@ -40,7 +40,12 @@ function commonFlags({ trajectory, leapSeconds, clock, basis }: Setting, at: Ins
 }
 
 /** An instant that lies outside the span or the years that are covered. `name`: what it is, for the sentence. */
-export function outsideSpan(setting: Setting, name: string, received: unknown, when: string): Problem {
+export function outsideSpan(
+  setting: Pick<Setting, "window" | "leapSeconds">,
+  name: string,
+  received: unknown,
+  when: string,
+): Problem {
   const { window, leapSeconds } = setting;
   const [first, last] = [window.first, window.last].map((end) => formatInstant(end, "UTC", leapSeconds));
   return new Problem("outside-span", `${name} lies ${when}, outside the trajectory's span ${first} to ${last}.`, [
@@ -49,5 +54,5 @@ export function outsideSpan(setting: Setting, name: string, received: unknown, w
 }
 
 /** Whether an instant can be answered for. */
-export const isInside = ({ window }: Setting, at: Instant): boolean =>
+export const isInside = ({ window }: Pick<Setting, "window">, at: Instant): boolean =>
   compareInstants(at, window.first) >= 0 && compareInstants(at, window.last) <= 0;

@@ -1,5 +1,5 @@
 import { counterModulus, durationToTicks, oscillatorTerms, ticksToDuration } from "../clock/index.ts";
-import { Problem } from "../problem/index.ts";
+import { invariant, Problem } from "../problem/index.ts";
 import {
   addDuration,
   addDurations,
@@ -16,7 +16,9 @@ import {
 } from "../time/index.ts";
 import { clockMinusTt } from "./clockMinusTt.ts";
 import { clockStateAt, isInside, outsideSpan } from "./clockState.ts";
-import type { CorrectedReading, Flag, Reading, Setting, Unwrap } from "./model.ts";
+import type { CorrectedReading, Face, Flag, Reading, Setting, Unwrap } from "./model.ts";
+
+type CounterFace = Extract<Face, { kind: "counter" }>;
 
 /** The fixed point takes 2 steps at 1e-10, 3 at 1 ppm, 5 at 100 ppm. */
 const mostIterations = 12;
@@ -29,10 +31,9 @@ const mostIterations = 12;
 export function correctReading(setting: Setting, reading: Reading, unwrap: Unwrap | null): CorrectedReading {
   const flags: Flag[] = [];
   const { clock } = setting;
-  const ticks = elapsedTicks(setting, reading, unwrap, flags);
-  const indicated = ticksToDuration(ticks, clock.counter.ticksPerSecond);
+  const indicated = indicatedSinceAnchor(setting, reading, unwrap, flags);
   const outside = (elapsed: Duration) =>
-    outsideSpan(setting, "The reading", String(reading.reading), whenInWords(setting, elapsed)).within("reading");
+    outsideSpan(setting, "The reading", reading.written, whenInWords(setting, elapsed)).within("reading");
   // A reading that is far outside by the oscillator alone is refused before anything is propagated for it.
   const rough = withoutRelativity(setting, indicated);
   if (!isNear(setting, rough)) throw outside(rough);
@@ -93,20 +94,40 @@ function whenInWords(setting: Setting, elapsed: Duration): string {
   return `${Math.abs(seconds).toPrecision(6)} s ${seconds < 0 ? "before" : "after"} the anchor`;
 }
 
-/** Ticks since the anchor, with the rollovers put back. */
-function elapsedTicks(setting: Setting, { reading, near }: Reading, unwrap: Unwrap | null, flags: Flag[]): bigint {
-  const { counter, anchor } = setting.clock;
-  const difference = reading - anchor.reading;
-  if (counter.widthBits === null) return difference;
-  const modulus = counterModulus(counter.widthBits);
-  if (reading < 0n || reading >= modulus) throw beyondWidth(reading, counter.widthBits).within("reading");
+/** What the clock has counted since the anchor's instant: exact, with the rollovers put back. */
+function indicatedSinceAnchor(setting: Setting, reading: Reading, unwrap: Unwrap | null, flags: Flag[]): Duration {
+  const { face, anchor } = setting.clock;
+  const { indicated } = reading;
+  if (face.kind === "stamp") {
+    invariant(typeof indicated !== "bigint", "a stamped clock is read as a moment");
+    return durationBetween(anchor.at, indicated);
+  }
+  invariant(typeof indicated === "bigint", "a counter is read as ticks");
+  return ticksToDuration(elapsedTicks(setting, face, indicated, reading, unwrap, flags), face.ticksPerSecond);
+}
+
+function elapsedTicks(
+  setting: Setting,
+  face: CounterFace,
+  ticks: bigint,
+  { near, written }: Reading,
+  unwrap: Unwrap | null,
+  flags: Flag[],
+): bigint {
+  const difference = ticks - face.anchorReading;
+  if (face.widthBits === null) return difference;
+  const modulus = counterModulus(face.widthBits);
+  if (!fits(ticks, face.widthBits)) throw beyondWidth(ticks, face.widthBits).within("reading");
   const turns =
     near !== null
-      ? turnsNear(setting, difference, modulus, near, flags)
-      : turnsByRule(setting, difference, modulus, unwrap);
+      ? turnsNear(setting, face, difference, modulus, near, flags)
+      : turnsByRule(setting, face, difference, modulus, unwrap, written);
   if (turns !== 0n) flags.unshift("rollover");
   return difference + turns * modulus;
 }
+
+/** Whether a value can stand on a counter of so many bits. */
+export const fits = (value: bigint, widthBits: number): boolean => value >= 0n && value < counterModulus(widthBits);
 
 export function beyondWidth(reading: bigint, widthBits: number): Problem {
   return new Problem("reading-beyond-width", `The reading ${reading} does not fit a counter of ${widthBits} bits.`, [
@@ -117,6 +138,7 @@ export function beyondWidth(reading: bigint, widthBits: number): Problem {
 /** The number of rollovers that brings the reading nearest to a rough time. */
 function turnsNear(
   setting: Setting,
+  face: CounterFace,
   difference: bigint,
   modulus: bigint,
   near: NonNullable<Reading["near"]>,
@@ -133,7 +155,7 @@ function turnsNear(
     ).within("near");
   }
   const { total } = clockMinusTt(setting, elapsed, false, false);
-  const { ticks } = durationToTicks(addDurations(elapsed, total), { ...clock.counter, stands: "rounded" });
+  const { ticks } = durationToTicks(addDurations(elapsed, total), { ...face, stands: "rounded" });
   const gap = ticks - difference;
   const turns = roundedQuotient(gap, modulus);
   // The rough time lies within a thousandth of the middle between two candidates: it does not settle much.
@@ -149,11 +171,18 @@ function roundedQuotient(a: bigint, b: bigint): bigint {
   return twice < 0n && twice % (2n * b) !== 0n ? q - 1n : q;
 }
 
-function turnsByRule(setting: Setting, difference: bigint, modulus: bigint, unwrap: Unwrap | null): bigint {
+function turnsByRule(
+  setting: Setting,
+  face: CounterFace,
+  difference: bigint,
+  modulus: bigint,
+  unwrap: Unwrap | null,
+  written: string,
+): bigint {
   if (unwrap === "nearest") return roundedQuotient(-difference, modulus);
   if (unwrap === "after") return difference >= 0n ? 0n : 1n; // |difference| < modulus
   if (unwrap === "before") return difference <= 0n ? 0n : -1n;
-  const inside = candidates(setting, difference, modulus);
+  const inside = candidates(setting, face, difference, modulus);
   const first = inside[0];
   if (first === undefined) return 0n; // not inside at all: the span test says so
   if (inside.length === 1) return first.turns;
@@ -164,7 +193,7 @@ function turnsByRule(setting: Setting, difference: bigint, modulus: bigint, unwr
     [
       {
         place: ["reading"],
-        received: String(difference + setting.clock.anchor.reading),
+        received: written,
         expected: 'a rough time "near", or "unwrap" to say which is meant',
       },
     ],
@@ -177,8 +206,13 @@ function turnsByRule(setting: Setting, difference: bigint, modulus: bigint, unwr
  * (one to spare for a clock that is off at the anchor). The span's ends are met without relativity, to a microsecond, so
  * that the question costs no propagation.
  */
-function candidates(setting: Setting, difference: bigint, modulus: bigint): { turns: bigint; elapsed: Duration }[] {
-  const rate = setting.clock.counter.ticksPerSecond;
+function candidates(
+  setting: Setting,
+  face: CounterFace,
+  difference: bigint,
+  modulus: bigint,
+): { turns: bigint; elapsed: Duration }[] {
+  const rate = face.ticksPerSecond;
   const out: { turns: bigint; elapsed: Duration }[] = [];
   const firstAfter = difference >= 0n ? 0n : 1n; // |difference| < modulus
   for (const step of [0n, -1n, 1n, -2n, 2n, -3n]) {

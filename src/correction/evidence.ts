@@ -3,8 +3,7 @@ import canonicalize from "canonicalize";
 import { invariant } from "../problem/index.ts";
 import { formatInstant } from "../time/index.ts";
 import { constants } from "../units/index.ts";
-import type { Setting } from "./model.ts";
-import { ephemerisUsed } from "./setting.ts";
+import { ephemerisUsed, type Footing } from "./setting.ts";
 
 /** What makes a result repeatable. */
 export interface Evidence {
@@ -26,7 +25,7 @@ const constantSet: Readonly<Record<string, number>> = Object.fromEntries(
   Object.entries(constants).map(([name, { value }]) => [name, value]),
 );
 
-export function makeEvidence(request: unknown, setting: Setting, version: string): Evidence {
+export function makeEvidence(request: unknown, setting: Footing, version: string): Evidence {
   const { leapSeconds } = setting;
   return {
     inputsSha256: canonicalDigest(request),

@@ -1,10 +1,14 @@
+export { type DriftBudget, driftBudget, type TermBudget } from "./budget.ts";
+export { isInside, outsideSpan } from "./clockState.ts";
 export { correctReading } from "./correct.ts";
 export { canonicalDigest, type Evidence, makeEvidence } from "./evidence.ts";
 export type {
   Clock,
   ClockState,
   CorrectedReading,
+  Face,
   Flag,
+  Indication,
   PredictedReading,
   Reading,
   Setting,
@@ -15,8 +19,10 @@ export type {
 export { predictReading } from "./predict.ts";
 export {
   buildProperTime,
+  type Footing,
   type GivenOrientation,
   makeSetting,
   type PathRequest,
   settingNotices,
+  usableWindow,
 } from "./setting.ts";

@@ -3,11 +3,22 @@ import type { Trajectory } from "../orbit/index.ts";
 import type { ProperTime } from "../relativity/index.ts";
 import type { Duration, Instant, LeapSecondTable } from "../time/index.ts";
 
-/** A clock as the corrections see it. */
+/** What a clock shows: ticks counted since some moment, or the time itself as it knows it. */
+export type Face =
+  | ({ readonly kind: "counter" /** At the anchor. */; readonly anchorReading: bigint } & Counter)
+  | {
+      readonly kind: "stamp";
+      /** Step in which the stamp is written, s; null when it is as good as its digits. */
+      readonly resolution: number | null;
+    };
+
+/** A reading freed of its writing: ticks of a counter, or the moment that a stamp names. */
+export type Indication = bigint | Instant;
+
+/** A clock as the corrections see it. A stamped clock's offset at the anchor is part of its oscillator's offset. */
 export interface Clock {
-  readonly counter: Counter;
+  readonly face: Face;
   readonly anchor: {
-    readonly reading: bigint;
     readonly at: Instant;
     /** One sigma of `at`, s. Null: not given. */
     readonly sigma: number | null;
@@ -21,7 +32,9 @@ export type Basis = "predicted" | "reconstructed";
 export type Unwrap = "after" | "before" | "nearest";
 
 export interface Reading {
-  readonly reading: bigint;
+  readonly indicated: Indication;
+  /** As the user wrote it, for messages. */
+  readonly written: string;
   readonly near: Instant | null;
 }
 
@@ -83,8 +96,9 @@ export interface ClockState {
 export type CorrectedReading = ClockState;
 
 export interface PredictedReading extends ClockState {
-  readonly reading: bigint;
-  /** Part of a tick beyond the reading. */
+  readonly indicated: Indication;
+  /** Part of a tick beyond the reading; zero for a stamp. */
   readonly fraction: number;
-  readonly sigmaTicks: number;
+  /** Null for a stamp that is as good as its digits. */
+  readonly sigmaTicks: number | null;
 }

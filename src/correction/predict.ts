@@ -1,5 +1,5 @@
 import { counterModulus, durationToTicks, tickSeconds, wrap } from "../clock/index.ts";
-import { addDurations, durationBetween, formatInstant, type Instant } from "../time/index.ts";
+import { addDuration, addDurations, durationBetween, formatInstant, type Instant } from "../time/index.ts";
 import { clockStateAt, isInside, outsideSpan } from "./clockState.ts";
 import type { Flag, PredictedReading, Setting } from "./model.ts";
 
@@ -17,15 +17,21 @@ export function predictReading(setting: Setting, instant: Instant): PredictedRea
   const elapsed = durationBetween(clock.anchor.at, instant);
   const flags: Flag[] = [];
   const state = clockStateAt(setting, elapsed, false, []);
-  const { ticks, fraction } = durationToTicks(addDurations(elapsed, state.clockMinusTt), clock.counter);
-  const total = clock.anchor.reading + ticks;
-  const reading = clock.counter.widthBits === null ? total : wrap(total, counterModulus(clock.counter.widthBits));
-  if (reading !== total) flags.push("rollover");
+  const { face } = clock;
+  const indicated = addDurations(elapsed, state.clockMinusTt);
+  if (face.kind === "stamp") {
+    const sigmaTicks = face.resolution === null ? null : state.combinedSigma / face.resolution;
+    return { ...state, indicated: addDuration(clock.anchor.at, indicated), fraction: 0, sigmaTicks };
+  }
+  const { ticks, fraction } = durationToTicks(indicated, face);
+  const total = face.anchorReading + ticks;
+  const shown = face.widthBits === null ? total : wrap(total, counterModulus(face.widthBits));
+  if (shown !== total) flags.push("rollover");
   return {
     ...state,
     flags: [...flags, ...state.flags],
-    reading,
+    indicated: shown,
     fraction,
-    sigmaTicks: state.combinedSigma / tickSeconds(clock.counter.ticksPerSecond),
+    sigmaTicks: state.combinedSigma / tickSeconds(face.ticksPerSecond),
   };
 }

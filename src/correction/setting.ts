@@ -1,6 +1,5 @@
 import { type EarthOrientation, sunMoonSource } from "../bodies/index.ts";
-import { counterModulus } from "../clock/index.ts";
-import { buildTrajectory, type TrajectoryDescription } from "../orbit/index.ts";
+import { buildTrajectory, type Trajectory, type TrajectoryDescription } from "../orbit/index.ts";
 import { at, type Notice } from "../problem/index.ts";
 import { type PhysicalTermName, ProperTime, physicalTermNames, rateTerms } from "../relativity/index.ts";
 import {
@@ -13,7 +12,7 @@ import {
   secondsBetween,
 } from "../time/index.ts";
 import { isInside, outsideSpan } from "./clockState.ts";
-import { beyondWidth } from "./correct.ts";
+import { beyondWidth, fits } from "./correct.ts";
 import type { Basis, Clock, Setting } from "./model.ts";
 
 /** UT1 - UTC (s) and pole coordinates (rad); null: not given. */
@@ -56,23 +55,17 @@ export function makeSetting(
   given: { readonly orientation: GivenOrientation; readonly basis: Basis | null },
   leapSeconds: LeapSecondTable,
 ): Setting {
-  const { widthBits } = clock.counter;
-  const { reading } = clock.anchor;
-  if (widthBits !== null && (reading < 0n || reading >= counterModulus(widthBits))) {
-    throw beyondWidth(reading, widthBits).within("clock", "anchor", "reading");
+  const { face } = clock;
+  if (face.kind === "counter" && face.widthBits !== null && !fits(face.anchorReading, face.widthBits)) {
+    throw beyondWidth(face.anchorReading, face.widthBits).within("clock", "anchor", "reading");
   }
   const { trajectory } = properTime;
-  const years = coveredYears(leapSeconds);
-  const first = trajectory.first === null ? years.first : later(years.first, trajectory.first);
-  const last = trajectory.last === null ? years.last : earlier(years.last, trajectory.last);
-  const from = Math.max(trajectory.from, secondsBetween(trajectory.reference, first));
-  const to = Math.min(trajectory.to, secondsBetween(trajectory.reference, last));
   const setting: Setting = {
     clock,
     trajectory,
     properTime,
     leapSeconds,
-    window: { first, last, from, to },
+    window: usableWindow(trajectory, leapSeconds),
     basis: given.basis,
     earthOrientationGiven: given.orientation.ut1MinusUtc !== null,
   };
@@ -83,8 +76,21 @@ export function makeSetting(
   return setting;
 }
 
+/** The trajectory's span inside the years that are covered. */
+export function usableWindow(trajectory: Trajectory, leapSeconds: LeapSecondTable): Setting["window"] {
+  const years = coveredYears(leapSeconds);
+  const first = trajectory.first === null ? years.first : later(years.first, trajectory.first);
+  const last = trajectory.last === null ? years.last : earlier(years.last, trajectory.last);
+  const from = Math.max(trajectory.from, secondsBetween(trajectory.reference, first));
+  const to = Math.min(trajectory.to, secondsBetween(trajectory.reference, last));
+  return { first, last, from, to };
+}
+
+/** What an answer along a trajectory rests on, with a clock or without. */
+export type Footing = Pick<Setting, "trajectory" | "properTime" | "leapSeconds" | "earthOrientationGiven">;
+
 /** Remarks that hold for a whole answer. `leapTableExpired`: a result lies after the table's expiry. */
-export function settingNotices(setting: Setting, leapTableExpired: boolean): Notice[] {
+export function settingNotices(setting: Footing, leapTableExpired: boolean): Notice[] {
   const { trajectory, properTime } = setting;
   const out: Notice[] = trajectory.notices.map((notice) => ({
     ...notice,
@@ -111,7 +117,7 @@ export function settingNotices(setting: Setting, leapTableExpired: boolean): Not
 }
 
 /** Where the Sun and the Moon came from; null when neither was used. */
-export function ephemerisUsed({ trajectory, properTime }: Setting): string | null {
+export function ephemerisUsed({ trajectory, properTime }: Footing): string | null {
   const tides = properTime.terms.some(({ needs }) => needs.includes("sun") || needs.includes("moon"));
   return trajectory.usesSunMoon || tides ? sunMoonSource : null;
 }

@@ -1,7 +1,7 @@
 import { oscillatorSigmas, tickSeconds } from "../clock/index.ts";
 import { C2, DAY, EARTH_ROTATION, GM_EARTH } from "../units/index.ts";
 import { anchorTime } from "./clockMinusTt.ts";
-import type { Setting, UncertaintyItem } from "./model.ts";
+import type { Face, Setting, UncertaintyItem } from "./model.ts";
 
 /** 0.9 s, the largest |UT1 - UTC|, as a rectangular distribution: its angle in rad. */
 const unknownRotation = (0.9 / Math.sqrt(3)) * EARTH_ROTATION;
@@ -36,10 +36,15 @@ export function uncertaintyItems(setting: Setting, elapsed: number, asRead: bool
     Math.abs(trajectory.interpolationError(start, end)) + 1e-17 * (1 + Math.abs(elapsed) / 3600),
     "log",
   );
-  if (asRead && clock.counter.stands !== "edge") {
-    item("tick", tickSeconds(clock.counter.ticksPerSecond) / Math.sqrt(12), "row");
-  }
+  const step = faceStep(clock.face);
+  if (asRead && step !== null) item("tick", step / Math.sqrt(12), "row");
   return out;
+}
+
+/** The step in which a face hides the time, s; null when a reading marks its own moment. */
+function faceStep(face: Face): number | null {
+  if (face.kind === "stamp") return face.resolution;
+  return face.stands === "edge" ? null : tickSeconds(face.ticksPerSecond);
 }
 
 /** Root of the sum of squares. Source: JCGM 100:2008 eq. 10. */

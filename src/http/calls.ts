@@ -1,11 +1,17 @@
 import {
   type Bench,
+  budgetRequestSchema,
+  budgetResponseSchema,
+  conversionRequestSchema,
+  conversionResponseSchema,
   correctionRequestSchema,
   correctionResponseSchema,
   corrections,
+  driftBudgets,
   predictedReadings,
   predictionRequestSchema,
   predictionResponseSchema,
+  timeConversions,
   type z,
 } from "../wire/index.ts";
 
@@ -39,5 +45,25 @@ export const calls: readonly Call[] = [
     request: predictionRequestSchema,
     response: predictionResponseSchema,
     answer: predictedReadings,
+  },
+  {
+    path: "/v1/drift-budgets",
+    operation: "budgetDrift",
+    summary: "How far an ideal clock drifts along a trajectory",
+    description:
+      "Per term the mean rate over whole revolutions, per orbit, per day and the wave about the mean; two closed forms beside the integral, with the difference and its reason; the frequency preset that takes the mean away; a series.",
+    request: budgetRequestSchema,
+    response: budgetResponseSchema,
+    answer: driftBudgets,
+  },
+  {
+    path: "/v1/time-conversions",
+    operation: "convertTimes",
+    summary: "Instants and time codes to other time scales and time codes",
+    description:
+      "Exact to the picosecond in every scale and bit for bit in every code of CCSDS 301.0-B-4. Codes are truncated to their resolution, and what that loses is told. TDB and TCB are those of the geocentre (Fairhead & Bretagnon 1990, 787 terms). All or nothing: one value that cannot be read, or that a code cannot show, refuses the request and is pointed to.",
+    request: conversionRequestSchema,
+    response: conversionResponseSchema,
+    answer: timeConversions,
   },
 ];

@@ -13,5 +13,6 @@ export {
   product,
   scale,
   subtract,
+  transpose,
   type Vec3,
 } from "./vector.ts";

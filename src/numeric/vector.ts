@@ -25,6 +25,8 @@ export const multiplyTransposed = (m: Mat3, v: Vec3): Vec3 => [
   m[2] * v[0] + m[5] * v[1] + m[8] * v[2],
 ];
 
+export const transpose = (m: Mat3): Mat3 => [m[0], m[3], m[6], m[1], m[4], m[7], m[2], m[5], m[8]];
+
 export function product(a: Mat3, b: Mat3): Mat3 {
   const out: number[] = [];
   for (let i = 0; i < 9; i += 3) {

@@ -7,11 +7,13 @@ import {
   normalToFixedRate,
 } from "../bodies/index.ts";
 import { cross, dot, norm, scale, type Vec3 } from "../numeric/index.ts";
-import { type Notice, Problem } from "../problem/index.ts";
+import { at, type Notice, Problem } from "../problem/index.ts";
 import { compareInstants, type Instant, secondsBetween } from "../time/index.ts";
 import { GM_EARTH } from "../units/index.ts";
 import { osculatingElements } from "./elements.ts";
 import { type Frame, type Kinematics, toGcrf } from "./frames.ts";
+import { type MeanElements, MeanElementTrajectory } from "./meanElements.ts";
+import { type Phase, PhasedTrajectory } from "./phases.ts";
 import { implausibleState, implausibleTable, isFast, requirePossible } from "./plausibility.ts";
 import { PropagatedTrajectory } from "./propagated.ts";
 import { SurfaceTrajectory, surfaceReference, type TrackLeg, TrackTrajectory } from "./surface.ts";
@@ -49,6 +51,11 @@ export type TrajectoryDescription =
       readonly kind: "state-table";
       readonly frame: Frame;
       readonly states: readonly { readonly epoch: Instant; readonly position: Vec3; readonly velocity: Vec3 | null }[];
+    }
+  | { readonly kind: "mean-elements"; readonly elements: MeanElements }
+  | {
+      readonly kind: "phases";
+      readonly parts: readonly { readonly from: Instant; readonly trajectory: TrajectoryDescription }[];
     }
   | ({ readonly kind: "surface"; readonly heightOf: HeightOf } & GeodeticPoint)
   | {
@@ -93,7 +100,44 @@ export function buildTrajectory(
     }
     case "track":
       return buildTrack(description, orientation);
+    case "mean-elements": {
+      const { elements } = description;
+      return new MeanElementTrajectory(elements, new EarthAxes(elements.epoch, orientation));
+    }
+    case "phases":
+      return buildPhases(description, orientation);
   }
+}
+
+function buildPhases({ parts }: Of<"phases">, orientation: EarthOrientation): Trajectory {
+  requireRising(
+    parts.map(({ from }) => from),
+    "parts",
+    "from",
+  );
+  const notices: Notice[] = [];
+  const phases = parts.map(({ from, trajectory: description }, i): Phase => {
+    const place = ["parts", i, "trajectory"];
+    const trajectory = at(place, () => buildTrajectory(description, orientation, from));
+    notices.push(...trajectory.notices.map((notice) => ({ ...notice, place: [...place, ...(notice.place ?? [])] })));
+    const last = parts[i + 1]?.from ?? trajectory.last;
+    if (trajectory.first !== null && compareInstants(from, trajectory.first) < 0) {
+      throw impossibleTable(
+        [...place.slice(0, 2), "from"],
+        `Part ${i} begins before its trajectory does.`,
+        "an instant inside the part's own trajectory",
+      );
+    }
+    if (trajectory.last !== null && (last === null || compareInstants(last, trajectory.last) > 0)) {
+      throw impossibleTable(
+        place,
+        `The trajectory of part ${i} ends before the next part begins.`,
+        "a trajectory that reaches to the next part's start",
+      );
+    }
+    return { trajectory, first: from, last };
+  });
+  return new PhasedTrajectory(phases, new EarthAxes(parts[0]!.from, orientation), notices);
 }
 
 type Of<K extends TrajectoryDescription["kind"]> = Extract<TrajectoryDescription, { kind: K }>;

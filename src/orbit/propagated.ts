@@ -10,12 +10,15 @@ import { SteppedPath } from "./summedMultistep.ts";
 import type { OrbitError, StateArray, Trajectory } from "./trajectory.ts";
 
 /** A state is propagated so far from its epoch, either way. */
-const propagationReach = 400 * DAY;
+export const propagationReach = 400 * DAY;
 
 /** Nearer to the centre than this nothing is propagated: the state was not what was meant, and steps would vanish. */
 const innermost = 1_000e3;
 /** Further out the geocentric formula gives way to the barycentric one. */
 export const outermost = 1_500_000e3;
+
+/** A low orbit takes 617 000 steps in 400 days, one with e = 0.74 a million; more is asked by no path that a clock takes. */
+const mostSteps = 1_500_000;
 
 /** The four knots about an interval of the uniform lattice, at -1, 0, 1, 2: slopes of their Lagrange polynomials. */
 const knotSlopes = [-11 / 6, -1 / 2, 1 / 2, 11 / 6];
@@ -69,6 +72,7 @@ export class PropagatedTrajectory implements Trajectory {
 
   extend(from: number, to: number): void {
     const h = this.#path.step;
+    if (Math.max(-from, to) / h > mostSteps) throw tooLow(h);
     const check = (index: number, states: Float64Array, at: number) => this.#check(index, states, at);
     this.#path.growTo(Math.floor(to / h) + 3, check);
     this.#path.growTo(Math.floor(from / h) - 2, check);
@@ -148,4 +152,19 @@ function stepFor(elements: OsculatingElements, position: Vec3): number {
   const step = Math.min(most, Math.floor(0.05 / fastest));
   if (step < 1) throw new Problem("impossible-state", "The state moves too fast for its distance to be propagated.");
   return step;
+}
+
+function tooLow(step: number): Problem {
+  const days = Math.floor((mostSteps * step) / DAY);
+  return new Problem(
+    "impossible-state",
+    `The orbit passes so near to the Earth's centre that it can be propagated for ${days} days only.`,
+    [
+      {
+        place: ["trajectory"],
+        expected: `a state whose perigee lies outside the Earth, or readings within ${days} days of its epoch`,
+      },
+    ],
+    true,
+  );
 }

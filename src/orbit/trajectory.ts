@@ -29,7 +29,7 @@ export interface ModelError {
  * A path of a clock near the Earth. One interface for every kind: time is TT seconds since `reference`.
  */
 export interface Trajectory {
-  readonly kind: "state-vector" | "state-table" | "surface" | "track";
+  readonly kind: "state-vector" | "state-table" | "mean-elements" | "phases" | "surface" | "track";
   /** t = 0. */
   readonly reference: Instant;
   /** First and last usable time; infinite when unlimited. */

@@ -21,6 +21,12 @@ export const problemCatalogue = {
     remedy:
       'Write UTC as "2026-03-01T00:00:00.5Z", any other scale as { "at": "2026-03-01T00:00:37", "scale": "TAI" }.',
   },
+  "invalid-time-code": {
+    status: 400,
+    title: "A time code cannot be read or written in the format given",
+    remedy:
+      "The detail says which part is wrong and what would be right; a format names its octets, epoch and P-field (CCSDS 301.0-B-4).",
+  },
   "unknown-path": {
     status: 404,
     title: "There is nothing at this address",
@@ -76,6 +82,11 @@ export const problemCatalogue = {
     title: "An instant lies outside the span of the trajectory",
     remedy: "The detail names the span; nothing is extrapolated beyond it.",
   },
+  "horizon-too-long": {
+    status: 422,
+    title: "A horizon is longer than the service computes",
+    remedy: "A budget covers at most 20 years, and no more than the trajectory's span.",
+  },
   "internal-error": {
     status: 500,
     title: "The service failed",
@@ -96,12 +107,14 @@ export const noticeCatalogue = {
   "orbit-uncertainty-not-given": "No uncertainty was given for the orbit; none is invented, so none is included.",
   "isotropic-orbit-uncertainty": "One sigma for every direction: the orbit's contribution is an upper bound.",
   "implausible-orbit": "The orbit is hardly what was meant; the text says what probably was.",
+  "mean-element-uncertainty": "Mean elements bring no uncertainty; the usual size is assumed and said.",
   "coarse-ephemeris": "The table is too coarse for its orbit; the estimated interpolation error is in the uncertainty.",
   "velocities-derived": "The table has no velocities; they were derived from its positions.",
   "earth-orientation-not-given":
     "UT1 - UTC and the pole were taken as zero; the uncertainty carries what that may cost.",
   "leap-table-expired": "A corrected instant lies after the expiry of the leap-second table.",
   "weak-field-limit": "The speed is beyond 1e-3 of light near masses; the sum of the terms is then approximate.",
+  "model-limited": "All digits are exact by the model that the text names; the model itself is not known as well.",
   "realised-scale": "The scale is related to TAI by its integer rule; its realisation differs by nanoseconds.",
 } as const;
 

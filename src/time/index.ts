@@ -1,4 +1,6 @@
 export { calendarDate, dayNumber } from "./calendar.ts";
+export { readTimeCode, type TimeCodeFormat, writeTimeCode } from "./codes/timeCode.ts";
+export type { WrittenCode } from "./codes/written.ts";
 export { daysUntil, displayDate } from "./display.ts";
 export {
   addDurations,
@@ -34,3 +36,4 @@ export {
   scales,
   ttSecondsSinceJ2000,
 } from "./scales.ts";
+export { type EarthPlace, geocentricTdbMinusTt, tdbMinusTt, topocentricTdbMinusTt } from "./tdbMinusTt.ts";

@@ -1,21 +1,42 @@
 import { Problem } from "../problem/index.ts";
 import { calendarDate, dayNumber, daysInMonth, isLeapYear } from "./calendar.ts";
+import { type CoordinateTime, coordinateTimeMinusTt, instantOfCoordinateTime, shifted } from "./coordinateTimes.ts";
 import type { Instant } from "./instant.ts";
 import type { LeapSecondTable } from "./leapSeconds.ts";
 
 /** Time scales in which an instant can be written. */
-export const scales = ["UTC", "TAI", "TT", "GPS"] as const;
+export const scales = ["UTC", "TAI", "TT", "TCG", "TDB", "TCB", "GPS", "GST", "BDT", "GLONASS"] as const;
 export type Scale = (typeof scales)[number];
 
+interface Offset {
+  readonly seconds: number;
+  readonly picoseconds: number;
+}
+
+const ttMinusTai: Offset = { seconds: 32, picoseconds: 184_000_000_000 };
+
 /**
- * Scale - TAI for the scales that keep a fixed distance: whole seconds and picoseconds.
- * Source: IAU 1991 Resolution A4 (TT), IS-GPS-200 20.3.3.5.2.4 (GPS, by its integer rule).
+ * Scale - TAI for the scales that keep a fixed distance: whole seconds and picoseconds. The navigation systems' by their
+ * integer rules. The coordinate times stand here with the part that is as that of TT.
+ * Source: IAU 1991 Resolution A4 (TT), IS-GPS-200 20.3.3.5.2.4 (GPS), Galileo OS SIS ICD 5.1.2 (GST) and BDS-SIS-ICD 3.3
+ * (BDT), the sections of the last two from memory.
  */
-const fixedOffsets = {
+const fixedOffsets: Readonly<Record<Exclude<Scale, "UTC" | "GLONASS">, Offset>> = {
   TAI: { seconds: 0, picoseconds: 0 },
-  TT: { seconds: 32, picoseconds: 184_000_000_000 },
+  TT: ttMinusTai,
+  TCG: ttMinusTai,
+  TDB: ttMinusTai,
+  TCB: ttMinusTai,
   GPS: { seconds: -19, picoseconds: 0 },
-} as const;
+  GST: { seconds: -19, picoseconds: 0 },
+  BDT: { seconds: -33, picoseconds: 0 },
+};
+
+const isCoordinateTime = (scale: Scale): scale is CoordinateTime =>
+  scale === "TDB" || scale === "TCB" || scale === "TCG";
+
+/** GLONASS time - UTC, s: Moscow's standard time, leap seconds included. Source: GLONASS ICD 5.1 (2008), 3.3.3, from memory. */
+const glonassMinusUtc = 10_800;
 
 const firstDay = dayNumber(1972, 1, 1);
 const afterLastDay = dayNumber(2101, 1, 1);
@@ -44,7 +65,8 @@ function whyNotAnInstant(text: string, scale: Scale): string {
 
 /**
  * Reads ISO 8601, calendar date or day of year, up to 12 decimals, in the given scale. UTC ends in Z, other scales have
- * no suffix. 23:59:60 is read where the table has a leap second.
+ * no suffix. 23:59:60 is read where the table has a leap second; in GLONASS time it is 02:59:60 of the next day.
+ * Accuracy: to the picosecond; TDB and TCB are those of the geocentre, by the series of tdbMinusTt.
  * Errors: invalid-instant (shape, day, time that never was), instant-out-of-range (before 1972 or after 2100).
  */
 export function parseInstant(text: string, scale: Scale, leapSeconds: LeapSecondTable): Instant {
@@ -80,13 +102,15 @@ export function parseInstant(text: string, scale: Scale, leapSeconds: LeapSecond
   if (minute > 59) throw unreadable(text, "a minute from 00 to 59");
   const secondOfDay = hour * 3600 + minute * 60 + second;
   const picoseconds = decimals === "" ? 0 : Number(decimals.padEnd(12, "0"));
+  if (scale === "GLONASS") return readGlonass(text, day, secondOfDay, second, picoseconds, leapSeconds);
   if (scale !== "UTC") {
     if (second > 59) throw unreadable(text, `a second from 00 to 59: ${scale} has no leap seconds`);
     const offset = fixedOffsets[scale];
     const ps = picoseconds - offset.picoseconds;
     const borrow = ps < 0 ? 1 : 0;
     const seconds = day * 86_400 + secondOfDay - offset.seconds - borrow;
-    return requireCovered({ seconds, picoseconds: ps + borrow * 1e12 }, text, leapSeconds);
+    const label = { seconds, picoseconds: ps + borrow * 1e12 };
+    return requireCovered(isCoordinateTime(scale) ? instantOfCoordinateTime(scale, label) : label, text, leapSeconds);
   }
   const length = leapSeconds.secondsInDay(day);
   if (second > 59 && !(second === 60 && hour === 23 && minute === 59 && length === 86_401)) {
@@ -95,6 +119,28 @@ export function parseInstant(text: string, scale: Scale, leapSeconds: LeapSecond
   if (secondOfDay >= length)
     throw unreadable(text, "a second that existed: this day ended with a negative leap second");
   const seconds = day * 86_400 + secondOfDay + leapSeconds.offsetOnDay(day);
+  return requireCovered({ seconds, picoseconds }, text, leapSeconds);
+}
+
+/** GLONASS time: UTC three hours on, so the leap second that ends a UTC day is 02:59:60. */
+function readGlonass(
+  text: string,
+  day: number,
+  secondOfDay: number,
+  second: number,
+  picoseconds: number,
+  leapSeconds: LeapSecondTable,
+): Instant {
+  const before = secondOfDay < glonassMinusUtc || (second === 60 && secondOfDay === glonassMinusUtc);
+  const utcDay = before ? day - 1 : day;
+  const utcSecond = secondOfDay - glonassMinusUtc + (before ? 86_400 : 0);
+  const length = leapSeconds.secondsInDay(utcDay);
+  if (second > 59 && !(second === 60 && utcSecond === 86_400 && length === 86_401)) {
+    throw unreadable(text, "a second from 00 to 59: GLONASS had no leap second (02:59:60) at that time");
+  }
+  if (utcSecond >= length)
+    throw unreadable(text, "a second that existed: this UTC day ended with a negative leap second");
+  const seconds = utcDay * 86_400 + utcSecond + leapSeconds.offsetOnDay(utcDay);
   return requireCovered({ seconds, picoseconds }, text, leapSeconds);
 }
 
@@ -116,21 +162,33 @@ export function formatInstant(instant: Instant, scale: Scale, leapSeconds: LeapS
   let { picoseconds } = instant;
   let day: number;
   let secondOfDay: number;
-  if (scale === "UTC") {
+  let leap = false;
+  if (scale === "UTC" || scale === "GLONASS") {
     ({ day, second: secondOfDay } = leapSeconds.utcLabel(instant.seconds));
+    leap = secondOfDay === 86_400;
+    if (scale === "GLONASS") {
+      secondOfDay += glonassMinusUtc;
+      if (secondOfDay >= 86_400) {
+        secondOfDay -= 86_400;
+        day++;
+      }
+    }
   } else {
     const offset = fixedOffsets[scale];
-    picoseconds += offset.picoseconds;
+    const from = isCoordinateTime(scale) ? shifted(instant, coordinateTimeMinusTt(scale, instant)) : instant;
+    picoseconds = from.picoseconds + offset.picoseconds;
     const carry = picoseconds >= 1e12 ? 1 : 0;
     picoseconds -= carry * 1e12;
-    const total = instant.seconds + offset.seconds + carry;
+    const total = from.seconds + offset.seconds + carry;
     day = Math.floor(total / 86_400);
     secondOfDay = total - day * 86_400;
   }
   const date = calendarDate(day);
-  const leap = secondOfDay === 86_400;
-  const hour = leap ? 23 : Math.floor(secondOfDay / 3600);
-  const minute = leap ? 59 : Math.floor((secondOfDay - hour * 3600) / 60);
+  // A leap second carries the number 60 of the minute before.
+  if (leap) secondOfDay--;
+  const hour = Math.floor(secondOfDay / 3600);
+  const minute = Math.floor((secondOfDay - hour * 3600) / 60);
+  if (leap) secondOfDay++;
   const second = secondOfDay - hour * 3600 - minute * 60;
   const fraction = String(picoseconds).padStart(12, "0");
   const suffix = scale === "UTC" ? "Z" : "";

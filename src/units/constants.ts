@@ -14,6 +14,9 @@ export const constants = {
   speedOfLight: { value: 299_792_458, unit: "m/s", source: "SI, exact" },
   /** 1 - d(TT)/d(TCG). Defining: never to be computed again from a newer potential of the geoid. */
   lG: { value: 6.969290134e-10, unit: "1", source: "IAU 2000 Resolution B1.9, defining" },
+  /** 1 - d(TDB)/d(TCB). Defining, like the offset of TDB at 1977-01-01T00:00:00 TAI that follows it. */
+  lB: { value: 1.550519768e-8, unit: "1", source: "IAU 2006 Resolution B3, defining" },
+  tdb0: { value: -6.55e-5, unit: "s", source: "IAU 2006 Resolution B3, defining" },
   /** With TCG, used with GCRS coordinates everywhere. */
   gmEarth: { value: 3.986004418e14, unit: "m3/s2", source: iers },
   /** With TDB. */
@@ -39,6 +42,9 @@ export const C = constants.speedOfLight.value;
 /** c squared, m2/s2. */
 export const C2 = C * C;
 export const LG = constants.lG.value;
+export const LB = constants.lB.value;
+/** TDB - TCB at 1977-01-01T00:00:00 TAI (TCB 1977-01-01T00:00:32.184), s. */
+export const TDB0 = constants.tdb0.value;
 export const GM_EARTH = constants.gmEarth.value;
 export const GM_SUN = constants.gmSun.value;
 /** Moon's GM from the Earth's and the mass ratio, m3/s2. */

@@ -1,4 +1,4 @@
-import { counterValueSchema, instantSchema, number, sigma } from "./sharedSchemas.ts";
+import { instantSchema, number, readingSchema, sigma } from "./sharedSchemas.ts";
 import { z } from "./zod.ts";
 
 const counterSchema = z
@@ -30,6 +30,25 @@ const counterSchema = z
     }),
   })
   .openapi("Counter");
+
+const timeStampSchema = z
+  .strictObject({
+    scale: z.enum(["UTC", "TAI", "TT", "GPS", "GST", "BDT"]),
+    form: z.enum(["iso", "week-seconds", "seconds"]).optional().openapi({
+      description:
+        'How a reading is written: ISO 8601 (the default; UTC ends in Z), "WEEK SECONDS" or "SECONDS" since the epoch of GPS, GST or BDT, as text with up to 12 decimals.',
+    }),
+    resolutionS: number.gt(0).max(86_400).optional().openapi({
+      description: "Step in which the stamp is written; brings its share of uncertainty.",
+    }),
+    leapSeconds: z
+      .union([z.literal("followed"), z.strictObject({ heldAt: z.int().min(-1000).max(1000) })])
+      .optional()
+      .openapi({
+        description: "Of a UTC stamp: the clock follows leap seconds (the default), or holds TAI - UTC at a value.",
+      }),
+  })
+  .openapi("TimeStamp", { description: "A clock that shows the time itself." });
 
 const oscillatorSchema = z
   .strictObject({
@@ -63,10 +82,11 @@ const oscillatorSchema = z
 
 export const clockSchema = z
   .strictObject({
-    counter: counterSchema,
+    counter: counterSchema.optional(),
+    timeStamp: timeStampSchema.optional(),
     anchor: z
       .strictObject({
-        reading: counterValueSchema,
+        reading: readingSchema,
         at: instantSchema.openapi({
           description: "The instant on board at which the counter became `reading`, not that of ground receipt.",
         }),
@@ -75,4 +95,6 @@ export const clockSchema = z
       .openapi("Anchor", { description: "The reading and the instant at which the clock model starts." }),
     oscillator: oscillatorSchema.optional(),
   })
-  .openapi("Clock");
+  .openapi("Clock", { description: "Exactly one of counter and timeStamp says what its readings are." });
+
+export type ClockIn = z.infer<typeof clockSchema>;

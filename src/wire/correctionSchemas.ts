@@ -2,13 +2,13 @@ import { physicalTermNames } from "../relativity/index.ts";
 import { clockSchema } from "./clockSchemas.ts";
 import {
   basisSchema,
-  counterValueSchema,
   evidenceSchema,
   flagSchema,
   instantSchema,
   magnitude,
   noticeSchema,
   number,
+  readingSchema,
   scaleSchema,
   termValueSchema,
   uncertaintyItemSchema,
@@ -16,7 +16,7 @@ import {
 import { earthOrientationSchema, trajectorySchema } from "./trajectorySchemas.ts";
 import { z } from "./zod.ts";
 
-const termsSchema = z
+export const termsSchema = z
   .array(z.enum(physicalTermNames))
   .min(1)
   .max(physicalTermNames.length)
@@ -38,7 +38,7 @@ export const correctionRequestSchema = z
       .array(
         z.strictObject({
           id: z.string().max(200).optional(),
-          reading: counterValueSchema,
+          reading: readingSchema,
           near: instantSchema.optional().openapi({ description: "A rough time of the reading; settles rollovers." }),
         }),
       )
@@ -68,7 +68,7 @@ export const correctionResponseSchema = z
     results: z.array(
       z.strictObject({
         id: z.string().optional(),
-        reading: counterValueSchema,
+        reading: readingSchema,
         corrected: z
           .string()
           .openapi({ description: "Twelve decimals; UTC ends in Z.", example: "2026-03-01T00:10:00.000000123456Z" }),
@@ -90,11 +90,14 @@ export const predictionResponseSchema = z
       z.strictObject({
         at: z.string(),
         scale: scaleSchema,
-        reading: counterValueSchema.openapi({
-          description: "What the counter shows then: an integer up to 2^53 - 1, else a decimal string.",
+        reading: readingSchema.openapi({
+          description:
+            "What the clock shows then, as its readings are written; a counter value up to 2^53 - 1 is an integer.",
         }),
         fraction: number.openapi({ description: "Part of a tick beyond the reading." }),
-        sigmaTicks: magnitude,
+        sigmaTicks: magnitude
+          .nullable()
+          .openapi({ description: "In ticks, or in steps of a stamp's resolutionS; null for a stamp without one." }),
         ...stateFields,
       }),
     ),

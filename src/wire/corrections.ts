@@ -13,6 +13,7 @@ import {
 import { forEachItem, type Notice } from "../problem/index.ts";
 import type { ProperTime } from "../relativity/index.ts";
 import { formatDuration, formatInstant, type LeapSecondTable, toNanoseconds } from "../time/index.ts";
+import type { FaceWriter } from "./clockFace.ts";
 import {
   type CorrectionRequest,
   type CorrectionResponse,
@@ -22,7 +23,7 @@ import {
   predictionRequestSchema,
 } from "./correctionSchemas.ts";
 import { readClockAndPath, readInstants, readReadings } from "./fromRequest.ts";
-import { type InstantIn, writeCounterValue } from "./instants.ts";
+import type { InstantIn } from "./instants.ts";
 import { writeNotice } from "./problemDetails.ts";
 import { validate } from "./validate.ts";
 
@@ -43,20 +44,34 @@ export const plainBench = (leapSeconds: LeapSecondTable, version: string): Bench
 
 type Shared = Pick<CorrectionRequest, "clock" | "trajectory" | "terms" | "earthOrientation">;
 
-function prepare(request: Shared, bench: Bench): Setting {
-  const { clock, path } = readClockAndPath(request, bench.leapSeconds);
-  const properTime = bench.properTime(pathDigest(request), () => build(path, bench.leapSeconds));
-  return makeSetting(clock, properTime, { orientation: path.orientation, basis: basisOf(request) }, bench.leapSeconds);
+function prepare(request: Shared, bench: Bench): { setting: Setting; writer: FaceWriter } {
+  const { clock, writer, path } = readClockAndPath(request, bench.leapSeconds);
+  const properTime = bench.properTime(pathDigest({ ...request, from: request.clock.anchor.at }), () =>
+    build(path, bench.leapSeconds),
+  );
+  const setting = makeSetting(
+    clock,
+    properTime,
+    { orientation: path.orientation, basis: basisOf(request) },
+    bench.leapSeconds,
+  );
+  return { setting, writer };
 }
 
 const build = (path: PathRequest, leapSeconds: LeapSecondTable): ProperTime => buildProperTime(path, leapSeconds);
 
-const basisOf = ({ trajectory }: Pick<Shared, "trajectory">) =>
+export const basisOf = ({ trajectory }: Pick<Shared, "trajectory">) =>
   "basis" in trajectory ? (trajectory.basis ?? null) : null;
 
-function pathDigest({ clock, trajectory, terms, earthOrientation }: Shared): string {
+/** What an integral along a trajectory is made of, as a digest; `from`: where it is counted from. */
+export function pathDigest({
+  from,
+  trajectory,
+  terms,
+  earthOrientation,
+}: Omit<Shared, "clock"> & { from: InstantIn }): string {
   return canonicalDigest({
-    anchor: clock.anchor.at,
+    anchor: from,
     trajectory,
     terms: terms ?? null,
     earthOrientation: earthOrientation ?? null,
@@ -66,8 +81,8 @@ function pathDigest({ clock, trajectory, terms, earthOrientation }: Shared): str
 /** POST /v1/corrections and `tauline correct`: a parsed JSON value in, the answer out. All or nothing. */
 export function corrections(body: unknown, bench: Bench): CorrectionResponse {
   const request: CorrectionRequest = validate(correctionRequestSchema, body);
-  const readings = readReadings(request.readings, bench.leapSeconds);
-  const setting = prepare(request, bench);
+  const { setting, writer } = prepare(request, bench);
+  const readings = readReadings(request.readings, writer, bench.leapSeconds);
   const scale = request.scale ?? "UTC";
   const corrected = forEachItem(["readings"], readings, (reading) =>
     correctReading(setting, reading, request.unwrap ?? null),
@@ -89,13 +104,13 @@ export function corrections(body: unknown, bench: Bench): CorrectionResponse {
 export function predictedReadings(body: unknown, bench: Bench): PredictionResponse {
   const request: PredictionRequest = validate(predictionRequestSchema, body);
   const instants = readInstants(request.instants, bench.leapSeconds);
-  const setting = prepare(request, bench);
+  const { setting, writer } = prepare(request, bench);
   const scale = request.scale ?? "UTC";
   const predicted = forEachItem(["instants"], instants, (instant) => predictReading(setting, instant));
   const results = predicted.map((result) => ({
     at: formatInstant(result.at, scale, bench.leapSeconds),
     scale,
-    reading: writeCounterValue(result.reading),
+    reading: writer.write(result.indicated),
     fraction: result.fraction,
     sigmaTicks: result.sigmaTicks,
     ...writeState(result),

@@ -1,11 +1,20 @@
-import { type Counter, decimalRational, type Oscillator, type Rational, rational } from "../clock/index.ts";
+import type { Oscillator } from "../clock/index.ts";
 import type { Clock, GivenOrientation, PathRequest, Reading } from "../correction/index.ts";
 import type { StateError, TrajectoryDescription } from "../orbit/index.ts";
 import { at, forEachItem, Problem } from "../problem/index.ts";
-import { durationFromNanoseconds, type Instant, type LeapSecondTable } from "../time/index.ts";
+import {
+  addDurations,
+  type Duration,
+  durationBetween,
+  durationFromNanoseconds,
+  type Instant,
+  type LeapSecondTable,
+} from "../time/index.ts";
 import { ARCSECOND, DAY, DEGREE, KM, NS } from "../units/index.ts";
+import { type FaceWriter, readAnchor, readFace } from "./clockFace.ts";
+import type { ClockIn } from "./clockSchemas.ts";
 import type { CorrectionRequest, PredictionRequest } from "./correctionSchemas.ts";
-import { type InstantIn, readCounterValue, readInstant } from "./instants.ts";
+import { type InstantIn, readInstant } from "./instants.ts";
 
 /** Text and km to domain values and SI. Every error carries the place in the request. */
 
@@ -14,42 +23,36 @@ type Triple = readonly [number, number, number];
 const scaled = (v: Triple, k: number): Triple => [v[0] * k, v[1] * k, v[2] * k];
 const orNull = (value: number | undefined, k = 1): number | null => (value === undefined ? null : value * k);
 
-function readRate(value: number | string): Rational {
-  const text = String(value);
-  const [numerator, denominator] = text.split("/");
-  const fault = (detail: string, expected: string) =>
-    new Problem("impossible-clock", detail, [{ place: [], received: value, expected }]);
-  const rate =
-    denominator === undefined
-      ? decimalRational(text)
-      : BigInt(denominator) === 0n
-        ? null
-        : rational(BigInt(numerator!), BigInt(denominator));
-  if (rate === null || rate.numerator === 0n) {
-    throw fault(`The tick rate ${text} is no positive number.`, 'a positive number or "num/den" with both above zero');
-  }
-  const size = Number(rate.numerator) / Number(rate.denominator);
-  if (!(size >= 1e-6 && size <= 1e12)) {
-    throw fault(`A counter of ${text} ticks a second is out of reach.`, "from 1e-6 to 1e12 ticks a second");
-  }
-  return rate;
+/** A clock and how its readings are written. Places inside the clock. */
+export function readClock(given: ClockIn, leapSeconds: LeapSecondTable): { clock: Clock; writer: FaceWriter } {
+  const writer = readFace(given, leapSeconds);
+  const { instant, shown } = readAnchor(given, writer, leapSeconds);
+  const oscillator =
+    given.oscillator === undefined ? null : at(["oscillator"], () => readOscillator(given.oscillator!));
+  const face = writer.face(shown);
+  const clock: Clock = {
+    face,
+    anchor: { at: instant, sigma: orNull(given.anchor.sigmaNs, NS) },
+    oscillator: typeof shown === "bigint" ? oscillator : withStampOffset(oscillator, durationBetween(instant, shown)),
+  };
+  return { clock, writer };
 }
 
-function readClock(clock: CorrectionRequest["clock"], leapSeconds: LeapSecondTable): Clock {
-  const counter: Counter = {
-    ticksPerSecond: at(["counter", "ticksPerSecond"], () => readRate(clock.counter.ticksPerSecond)),
-    widthBits: clock.counter.widthBits ?? null,
-    stands: clock.counter.stands ?? "edge",
+/** A stamped clock is off at the anchor by what it showed less what it was, and by what is given besides. */
+function withStampOffset(oscillator: Oscillator | null, shownLessTrue: Duration): Oscillator {
+  const offset = oscillator?.offset ?? null;
+  const nothing = {
+    preset: null,
+    frequency: null,
+    aging: null,
+    frequencySigma: null,
+    agingSigma: null,
+    covariance: null,
   };
-  const instant = at(["anchor", "at"], () => readInstant(clock.anchor.at, leapSeconds));
-  return {
-    counter,
-    anchor: { reading: readCounterValue(clock.anchor.reading), at: instant, sigma: orNull(clock.anchor.sigmaNs, NS) },
-    oscillator: clock.oscillator === undefined ? null : at(["oscillator"], () => readOscillator(clock.oscillator!)),
-  };
+  return { ...(oscillator ?? nothing), offset: offset === null ? shownLessTrue : addDurations(offset, shownLessTrue) };
 }
 
-function readOscillator(given: NonNullable<CorrectionRequest["clock"]["oscillator"]>): Oscillator {
+function readOscillator(given: NonNullable<ClockIn["oscillator"]>): Oscillator {
   const { covariance, frequencySigma, agingSigmaPerDay } = given;
   if (covariance !== undefined && (frequencySigma !== undefined || agingSigmaPerDay !== undefined)) {
     throw new Problem("impossible-clock", "Both a covariance and single sigmas were given; they would count twice.", [
@@ -127,7 +130,10 @@ function isPositive(matrix: readonly (readonly number[])[]): boolean {
   return true;
 }
 
-function readTrajectory(given: CorrectionRequest["trajectory"], leapSeconds: LeapSecondTable): TrajectoryDescription {
+export function readTrajectory(
+  given: CorrectionRequest["trajectory"],
+  leapSeconds: LeapSecondTable,
+): TrajectoryDescription {
   const instant = (value: InstantIn, ...place: (string | number)[]): Instant =>
     at(place, () => readInstant(value, leapSeconds));
   switch (given.kind) {
@@ -164,6 +170,24 @@ function readTrajectory(given: CorrectionRequest["trajectory"], leapSeconds: Lea
   }
 }
 
+/** Where a trajectory begins of itself: its epoch or first state. Null for a clock that rests on the ground. */
+export function startOf(trajectory: TrajectoryDescription): Instant | null {
+  switch (trajectory.kind) {
+    case "state-vector":
+      return trajectory.epoch;
+    case "state-table":
+      return trajectory.states[0]!.epoch;
+    case "track":
+      return trajectory.points[0]!.at;
+    case "surface":
+      return null;
+    case "mean-elements":
+      return trajectory.elements.epoch;
+    case "phases":
+      return trajectory.parts[0]!.from;
+  }
+}
+
 const readPoint = (point: { latitudeDeg: number; longitudeDeg: number; heightM: number }) => ({
   latitude: point.latitudeDeg * DEGREE,
   longitude: point.longitudeDeg * DEGREE,
@@ -188,15 +212,20 @@ function readStateError(given: Extract<CorrectionRequest["trajectory"], { kind: 
   };
 }
 
-const readOrientation = (given: CorrectionRequest["earthOrientation"]): GivenOrientation => ({
+export const readOrientation = (given: CorrectionRequest["earthOrientation"]): GivenOrientation => ({
   ut1MinusUtc: given?.ut1MinusUtcS ?? null,
   xPole: orNull(given?.xPoleArcsec, ARCSECOND),
   yPole: orNull(given?.yPoleArcsec, ARCSECOND),
 });
 
-export const readReadings = (given: CorrectionRequest["readings"], leapSeconds: LeapSecondTable): Reading[] =>
+export const readReadings = (
+  given: CorrectionRequest["readings"],
+  writer: FaceWriter,
+  leapSeconds: LeapSecondTable,
+): Reading[] =>
   forEachItem(["readings"], given, ({ reading, near }) => ({
-    reading: readCounterValue(reading),
+    indicated: at(["reading"], () => writer.read(reading)),
+    written: String(reading),
     near: near === undefined ? null : at(["near"], () => readInstant(near, leapSeconds)),
   }));
 
@@ -207,9 +236,9 @@ export const readInstants = (given: PredictionRequest["instants"], leapSeconds: 
 export function readClockAndPath(
   request: Pick<CorrectionRequest, "clock" | "trajectory" | "terms" | "earthOrientation">,
   leapSeconds: LeapSecondTable,
-): { clock: Clock; path: PathRequest } {
-  const clock = at(["clock"], () => readClock(request.clock, leapSeconds));
+): { clock: Clock; writer: FaceWriter; path: PathRequest } {
+  const { clock, writer } = at(["clock"], () => readClock(request.clock, leapSeconds));
   const trajectory = at(["trajectory"], () => readTrajectory(request.trajectory, leapSeconds));
   const orientation = readOrientation(request.earthOrientation);
-  return { clock, path: { trajectory, orientation, terms: request.terms ?? null, anchor: clock.anchor.at } };
+  return { clock, writer, path: { trajectory, orientation, terms: request.terms ?? null, anchor: clock.anchor.at } };
 }

@@ -1,4 +1,13 @@
+export { type BudgetRequest, type BudgetResponse, budgetRequestSchema, budgetResponseSchema } from "./budgetSchemas.ts";
+export { driftBudgets } from "./budgets.ts";
 export { caution } from "./caution.ts";
+export {
+  type ConversionRequest,
+  type ConversionResponse,
+  conversionRequestSchema,
+  conversionResponseSchema,
+} from "./conversionSchemas.ts";
+export { timeConversions } from "./conversions.ts";
 export {
   type CorrectionRequest,
   type CorrectionResponse,

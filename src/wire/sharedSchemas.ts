@@ -26,20 +26,18 @@ export const instantSchema = z
     example: "2026-03-01T00:00:00.5Z",
   });
 
-export const counterValueSchema = z
+/** What a clock showed. Its text is read by the clock's own face, so only its size is bound here. */
+export const readingSchema = z
   .union(
     [
       z.int().openapi({ minimum: Number.MIN_SAFE_INTEGER, maximum: Number.MAX_SAFE_INTEGER }),
-      z
-        .string()
-        .max(120)
-        .regex(/^-?\d+$/, "decimal digits, with - in front when negative"),
+      z.string().max(120),
     ],
-    "a whole number up to 2^53 - 1, or a decimal string of any size",
+    "a whole number up to 2^53 - 1, or text: decimal digits of any size for a counter, a time as the clock writes it for a stamp",
   )
-  .openapi("CounterValue", {
+  .openapi("Reading", {
     description:
-      "A JSON integer up to 2^53 - 1, or a decimal string of any size (to 120 digits). Negative only without widthBits.",
+      "A counter value (a JSON integer up to 2^53 - 1, or decimal digits of any size as text, negative only without widthBits), or a time stamp as the clock writes it.",
     example: "48213377",
   });
 

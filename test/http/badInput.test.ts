@@ -228,7 +228,7 @@ const shapes: readonly Case[] = [
   shape("a field called __proto__", inText("{", '{"__proto__":{"clock":1},'), "/__proto__", /no such field/),
   bent("a field called constructor", "/constructor", {}, /no such field/),
   bent("no clock", "/clock", undefined, /missing/),
-  bent("no counter", "/clock/counter", undefined, /missing/),
+  bent("no counter", "/clock/counter", undefined, /exactly one/, "/clock"),
   bent("no tick rate", tick, undefined, /missing/),
   bent("no anchor", "/clock/anchor", undefined, /missing/),
   bent("no instant of the anchor", "/clock/anchor/at", undefined, /missing/),
@@ -891,6 +891,19 @@ const outside: readonly Case[] = spans.flatMap(({ kind, trajectory, reading: val
       ]),
 ]);
 
+/** The table of conversions.test.ts has the rest. */
+const conversions: readonly Case[] = [
+  {
+    name: "time code, half an octet",
+    path: "/v1/time-conversions",
+    body: { values: [{ timeCode: "1e5", format: { format: "CUC", coarseOctets: 1, fineOctets: 0 } }], to: ["UTC"] },
+    status: 400,
+    code: "invalid-time-code",
+    pointer: "/values/0/timeCode",
+    hint: /two an octet/,
+  },
+];
+
 const cases: readonly Case[] = [
   ...unreadable,
   ...transport,
@@ -900,6 +913,7 @@ const cases: readonly Case[] = [
   ...clocks,
   ...trajectories,
   ...outside,
+  ...conversions,
 ];
 
 /** Longest that a refusal may take, ms; a sixty-fourth of it is usual. */
@@ -950,8 +964,8 @@ describe("a bad request is refused with a sentence that helps", () => {
 
 describe("the interface document refuses what the service finds misshapen", () => {
   const misshapen = shapes.filter(
-    // What JSON Schema cannot tell: numbers that overflow only when parsed, and characters.
-    ({ name }) => !/1e400|surrogate/.test(name),
+    // What JSON Schema does not tell: numbers that overflow only when parsed, characters, what the clock's face reads.
+    ({ name }) => !/1e400|surrogate|a counter string (with|in|that) |no counter/.test(name),
   );
   it.each(misshapen)("$name", ({ path = corrections, body }) => {
     expect(documentAllows(path, typeof body === "string" ? JSON.parse(body) : body)).toBe(false);
@@ -963,7 +977,7 @@ describe("several bad items", () => {
     JSON.parse(response.text).faults.map(({ pointer }: { pointer: string }) => pointer);
 
   it("misshapen readings: a pointer each", async () => {
-    const body = correction({ readings: [{ reading: "x" }, { reading: 1 }, { reading: 2.5 }, {}] });
+    const body = correction({ readings: [{ reading: [] }, { reading: 1 }, { reading: 2.5 }, {}] });
     const response = await send(service.address, corrections, body);
     holdProblem("POST", corrections, response, "invalid-request");
     expect(pointersOf(response)).toEqual(["/readings/0/reading", "/readings/2/reading", "/readings/3/reading"]);
@@ -1108,8 +1122,12 @@ describe("failures that are not the request's", () => {
     }
   });
 
-  it("every code of the catalogue is produced by a case here", () => {
-    const produced = new Set<string>([...cases.map(({ code }) => code), "internal-error", "unavailable"]);
+  it("every code of the catalogue is produced by a case here or in the file of its call", () => {
+    // Calls with test files of their own: budgets, conversions, messages.
+    const elsewhere = ["horizon-too-long", "invalid-time-code", "invalid-message"].filter(
+      (code) => code in problemCatalogue,
+    );
+    const produced = new Set<string>([...cases.map(({ code }) => code), "internal-error", "unavailable", ...elsewhere]);
     expect([...produced].sort()).toEqual(Object.keys(problemCatalogue).sort());
     for (const { code, status } of cases) expect(status).toBe(problemCatalogue[code].status);
   });

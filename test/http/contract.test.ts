@@ -359,7 +359,9 @@ describe("the interface document", () => {
       "/openapi.json",
       "/readyz",
       "/v1/corrections",
+      "/v1/drift-budgets",
       "/v1/predicted-readings",
+      "/v1/time-conversions",
     ]);
   });
 

@@ -1,4 +1,5 @@
 import { ashby } from "./ashby.ts";
+import { coordinateTimes } from "./coordinateTimes.ts";
 import { galileoAndGlonass } from "./galileoAndGlonass.ts";
 import { gnssFigureRows } from "./gnssFigures.ts";
 import { gpsInterfaceSpecification } from "./gpsInterfaceSpecification.ts";
@@ -9,6 +10,7 @@ import { laboratoryExperiments } from "./laboratoryExperiments.ts";
 import { publicDerivations } from "./publicDerivations.ts";
 import type { Row } from "./row.ts";
 import { specialRelativity } from "./specialRelativity.ts";
+import { timeCodes } from "./timeCodes.ts";
 import { timeScales } from "./timeScales.ts";
 
 /** Every row that needs no file: a new source family is a file of its own and a line here. */
@@ -21,6 +23,8 @@ export const publishedRows: readonly Row[] = [
   ...hafeleKeating,
   ...laboratoryExperiments,
   ...timeScales,
+  ...coordinateTimes,
+  ...timeCodes,
   ...specialRelativity,
   ...iauRoutines,
   ...gnssFigureRows,
