@@ -5,7 +5,9 @@ import { runCommandLine } from "./cli/index.ts";
 import { BadEnvironment, type Config, readConfig, readLeapSeconds, version } from "./config.ts";
 import { displayDate } from "./time/index.ts";
 
-/** Longest time that work in hand may take after a signal, ms. */
+/** Longest time that work in hand may take after a signal, ms; who is still sending then is cut off. */
+const patienceMs = 5_000;
+/** Longest time that stopping may take altogether, ms. */
 const graceMs = 10_000;
 
 async function serve(config: Config): Promise<void> {
@@ -15,6 +17,7 @@ async function serve(config: Config): Promise<void> {
     app.stop();
     const closed = new Promise<void>((resolve) => server.close(() => resolve()));
     server.closeIdleConnections();
+    setTimeout(() => server.closeAllConnections(), patienceMs).unref();
     app.logger.info({ signal, err }, "stopping: no new connections; work in hand is finished");
     await closed;
   });

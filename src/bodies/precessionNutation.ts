@@ -37,12 +37,17 @@ export function nutation2000B(t: number): Nutation {
   let longitude = 0;
   let obliquity = 0;
   for (let i = nutationTerms.length - 1; i >= 0; i--) {
-    const [l, lp, f, d, om, ps, pst, pc, ec, ect, es] = nutationTerms[i]!;
-    const argument = l! * moonAnomaly + lp! * sunAnomaly + f! * latitudeArgument + d! * elongation + om! * node;
-    const s = Math.sin(argument);
-    const c = Math.cos(argument);
-    longitude += (ps! + pst! * t) * s + pc! * c;
-    obliquity += (ec! + ect! * t) * c + es! * s;
+    const [ofMoon, ofSun, ofLatitude, ofElongation, ofNode, ...amplitudes] = nutationTerms[i]!;
+    const argument =
+      ofMoon! * moonAnomaly +
+      ofSun! * sunAnomaly +
+      ofLatitude! * latitudeArgument +
+      ofElongation! * elongation +
+      ofNode! * node;
+    const sine = Math.sin(argument);
+    const cosine = Math.cos(argument);
+    longitude += (amplitudes[0]! + amplitudes[1]! * t) * sine + amplitudes[2]! * cosine;
+    obliquity += (amplitudes[3]! + amplitudes[4]! * t) * cosine + amplitudes[5]! * sine;
   }
   const unit = ARCSECOND * 1e-7;
   // Fixed offsets in place of the planetary terms.
@@ -84,21 +89,22 @@ const meanObliquity = (t: number): number =>
  */
 export function siderealLessRotation(t: number, n: Nutation): number {
   const precession = polynomial(t, 0.014506, 4612.156534, 1.3915817, -0.00000044, -0.000029956, -0.0000000368);
-  const { node: om, latitudeArgument: f, elongation: d } = n;
+  const { node, latitudeArgument, elongation } = n;
+  const fromSun = 2 * latitudeArgument - 2 * elongation;
   const complementary =
-    2640.96e-6 * Math.sin(om) +
-    63.52e-6 * Math.sin(2 * om) +
-    11.75e-6 * Math.sin(2 * f - 2 * d + 3 * om) +
-    11.21e-6 * Math.sin(2 * f - 2 * d + om) -
-    4.55e-6 * Math.sin(2 * f - 2 * d + 2 * om) +
-    2.02e-6 * Math.sin(2 * f + 3 * om) +
-    1.98e-6 * Math.sin(2 * f + om) -
-    1.72e-6 * Math.sin(3 * om) -
-    1.41e-6 * Math.sin(n.sunAnomaly + om) -
-    1.26e-6 * Math.sin(n.sunAnomaly - om) -
-    0.63e-6 * Math.sin(n.moonAnomaly + om) -
-    0.63e-6 * Math.sin(n.moonAnomaly - om) -
-    0.87e-6 * t * Math.sin(om);
+    2640.96e-6 * Math.sin(node) +
+    63.52e-6 * Math.sin(2 * node) +
+    11.75e-6 * Math.sin(fromSun + 3 * node) +
+    11.21e-6 * Math.sin(fromSun + node) -
+    4.55e-6 * Math.sin(fromSun + 2 * node) +
+    2.02e-6 * Math.sin(2 * latitudeArgument + 3 * node) +
+    1.98e-6 * Math.sin(2 * latitudeArgument + node) -
+    1.72e-6 * Math.sin(3 * node) -
+    1.41e-6 * Math.sin(n.sunAnomaly + node) -
+    1.26e-6 * Math.sin(n.sunAnomaly - node) -
+    0.63e-6 * Math.sin(n.moonAnomaly + node) -
+    0.63e-6 * Math.sin(n.moonAnomaly - node) -
+    0.87e-6 * t * Math.sin(node);
   return (precession + complementary) * ARCSECOND + n.longitude * Math.cos(meanObliquity(t));
 }
 
@@ -109,13 +115,13 @@ export function siderealLessRotation(t: number, n: Nutation): number {
 export const intermediatePole = new TabulatedFunction(3, 2 * DAY, 12, (ttSeconds) => {
   const t = ttSeconds / century;
   const nutation = nutation2000B(t);
-  const npb = trueOfDate(t, nutation);
-  const x = npb[6];
-  const y = npb[7];
+  const ofDate = trueOfDate(t, nutation);
+  const x = ofDate[6];
+  const y = ofDate[7];
   const q = poleMatrix(x, y);
-  // NPB times the transpose of Q is a rotation about the pole; its angle ties the intermediate origin to the equinox.
-  const c = npb[0] * q[0] + npb[1] * q[1] + npb[2] * q[2];
-  const s = npb[0] * q[3] + npb[1] * q[4] + npb[2] * q[5];
+  // The true axes of date seen from the unrotated ones differ by a rotation about the pole; its angle ties the intermediate origin to the equinox.
+  const c = ofDate[0] * q[0] + ofDate[1] * q[1] + ofDate[2] * q[2];
+  const s = ofDate[0] * q[3] + ofDate[1] * q[4] + ofDate[2] * q[5];
   return [x, y, siderealLessRotation(t, nutation) + Math.atan2(s, c)];
 });
 

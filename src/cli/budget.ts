@@ -49,7 +49,7 @@ async function assemble(options: BudgetOptions, surroundings: Surroundings): Pro
 const digits = (value: number, count: number): string => Number(value.toPrecision(count)).toString();
 
 /** A budget as text for people. */
-export function budgetReport(answer: BudgetResponse): string {
+function budgetReport(answer: BudgetResponse): string {
   const { orbit, closedForm, frequencyPreset } = answer;
   const rows = [...answer.terms, answer.total].map(({ term, meanRate, perOrbitNs, perDayUs, peakToPeakNs, label }) => [
     term,

@@ -6,12 +6,19 @@ import {
   sumDurations,
   toSeconds,
   toTwoPartSeconds,
+  zeroDuration,
 } from "../time/index.ts";
-import type { Setting, TermValue } from "./model.ts";
+import type { Clock, Setting, TermValue } from "./model.ts";
 
 /** Time of the anchor on the trajectory's own axis, s. */
 export const anchorTime = ({ trajectory, clock }: Setting): number =>
   secondsBetween(trajectory.reference, clock.anchor.at);
+
+/** What a truncated reading has lost, as a term: half a tick behind. */
+export function latchOf({ face }: Clock): Duration {
+  if (face.kind !== "counter" || face.stands !== "truncated") return zeroDuration;
+  return tickFraction(-1n, 2n, face.ticksPerSecond);
+}
 
 export interface Breakdown {
   readonly terms: readonly TermValue[];
@@ -38,8 +45,7 @@ export function clockMinusTt(setting: Setting, elapsed: Duration, asRead: boolea
   const tau = properTime(toTwoPartSeconds(elapsed), relativity);
   const terms: TermValue[] = oscillatorTerms(clock.oscillator, tau, 1 + relativityRate);
   if (asRead && clock.face.kind === "counter" && clock.face.stands === "truncated") {
-    const accumulated = tickFraction(-1n, 2n, clock.face.ticksPerSecond);
-    terms.push({ term: "latch", label: "Half a tick cut off by the latch", rate: 0, accumulated });
+    terms.push({ term: "latch", label: "Half a tick cut off by the latch", rate: 0, accumulated: latchOf(clock) });
   }
   for (const [k, { term, label }] of integral.terms.entries()) {
     terms.push({ term, label, rate: rates[k]!, accumulated: durationFromSeconds(physical[k]!) });

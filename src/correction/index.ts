@@ -19,9 +19,11 @@ export type {
 export { predictReading } from "./predict.ts";
 export {
   buildProperTime,
+  clockNotices,
   type Footing,
   type GivenOrientation,
   makeSetting,
+  orientationGiven,
   type PathRequest,
   settingNotices,
   usableWindow,

@@ -48,8 +48,8 @@ export interface Setting {
   readonly window: { readonly first: Instant; readonly last: Instant; readonly from: number; readonly to: number };
   /** Where the orbit comes from, as far as it was said. */
   readonly basis: Basis | null;
-  /** UT1 - UTC and the pole were given. */
-  readonly earthOrientationGiven: boolean;
+  /** What was given of the Earth's orientation. */
+  readonly given: { readonly ut1: boolean; readonly pole: boolean };
 }
 
 export type Flag =

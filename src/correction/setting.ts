@@ -67,7 +67,7 @@ export function makeSetting(
     leapSeconds,
     window: usableWindow(trajectory, leapSeconds),
     basis: given.basis,
-    earthOrientationGiven: given.orientation.ut1MinusUtc !== null,
+    given: orientationGiven(given.orientation),
   };
   if (!isInside(setting, clock.anchor.at)) {
     const text = formatInstant(clock.anchor.at, "UTC", leapSeconds);
@@ -87,7 +87,33 @@ export function usableWindow(trajectory: Trajectory, leapSeconds: LeapSecondTabl
 }
 
 /** What an answer along a trajectory rests on, with a clock or without. */
-export type Footing = Pick<Setting, "trajectory" | "properTime" | "leapSeconds" | "earthOrientationGiven">;
+export type Footing = Pick<Setting, "trajectory" | "properTime" | "leapSeconds" | "given">;
+
+export const orientationGiven = ({ ut1MinusUtc, xPole, yPole }: GivenOrientation): Setting["given"] => ({
+  ut1: ut1MinusUtc !== null,
+  pole: xPole !== null && yPole !== null,
+});
+
+/** Remarks on what is not known of a clock, and therefore not in its uncertainty. */
+export function clockNotices({ anchor, oscillator }: Clock): Notice[] {
+  const out: Notice[] = [];
+  if (anchor.sigma === null) {
+    out.push({
+      code: "anchor-uncertainty-not-given",
+      text: "No uncertainty of the anchor was given (sigmaNs), so none is in the result.",
+      place: ["clock", "anchor"],
+    });
+  }
+  const known = oscillator !== null && (oscillator.frequencySigma !== null || oscillator.covariance !== null);
+  if (!known) {
+    out.push({
+      code: "oscillator-uncertainty-not-given",
+      text: "No uncertainty of the oscillator was given (frequencySigma or covariance), so its drift is not in the uncertainty; neither is its noise.",
+      place: ["clock"],
+    });
+  }
+  return out;
+}
 
 /** Remarks that hold for a whole answer. `leapTableExpired`: a result lies after the table's expiry. */
 export function settingNotices(setting: Footing, leapTableExpired: boolean): Notice[] {
@@ -100,10 +126,12 @@ export function settingNotices(setting: Footing, leapTableExpired: boolean): Not
   if (left.length > 0) {
     out.push({ code: "terms-left-out", text: `Left out as asked: ${left.join(", ")}.`, place: ["terms"] });
   }
-  if (!setting.earthOrientationGiven) {
+  const { ut1, pole } = setting.given;
+  if (!ut1 || !pole) {
+    const missing = [...(ut1 ? [] : ["UT1 - UTC"]), ...(pole ? [] : ["the pole"])].join(" and ");
     out.push({
       code: "earth-orientation-not-given",
-      text: "UT1 - UTC and the pole were not given and are taken as zero; the uncertainty carries what that may cost.",
+      text: `${missing} not given and taken as zero; the uncertainty's earth-orientation carries what that may cost.`,
     });
   }
   if (leapTableExpired) {

@@ -1,10 +1,13 @@
 import { oscillatorSigmas, tickSeconds } from "../clock/index.ts";
-import { C2, DAY, EARTH_ROTATION, GM_EARTH } from "../units/index.ts";
+import { ARCSECOND, C2, DAY, EARTH_ROTATION, GM_EARTH } from "../units/index.ts";
 import { anchorTime } from "./clockMinusTt.ts";
 import type { Face, Setting, UncertaintyItem } from "./model.ts";
 
 /** 0.9 s, the largest |UT1 - UTC|, as a rectangular distribution: its angle in rad. */
 const unknownRotation = (0.9 / Math.sqrt(3)) * EARTH_ROTATION;
+
+/** 0.3 arcsecond, about the largest distance of the pole from its mean place, rad. */
+const unknownPole = 0.3 * ARCSECOND;
 
 /**
  * The named contributions to the standard uncertainty of a corrected instant, `elapsed` seconds after the anchor.
@@ -20,16 +23,15 @@ export function uncertaintyItems(setting: Setting, elapsed: number, asRead: bool
     out.push({ source, type: "B", sigma, shared });
   if (clock.anchor.sigma !== null) item("anchor", clock.anchor.sigma, "log");
   for (const { source, sigma } of oscillatorSigmas(clock.oscillator, elapsed)) item(source, sigma, "log");
-  const orbit = orbitSigma(setting, elapsed);
-  if (orbit !== null) item("orbit", orbit, "log");
   const { modelError } = trajectory;
-  const before = modelError.propagation(start);
-  const after = modelError.propagation(end);
-  const grown = Math.sign(start) * Math.sign(end) < 0 ? before + after : Math.abs(after - before);
-  item("force-model", Math.hypot(modelError.fieldTruncation(elapsed), grown), "log");
-  if (!setting.earthOrientationGiven && trajectory.kind === "state-vector") {
-    item("earth-orientation", earthOrientationSigma(elapsed), "log");
-  }
+  const lever = trajectory.energyLever(start, end);
+  const orbit = orbitSigma(setting, lever, elapsed);
+  if (orbit !== null) item("orbit", orbit, "log");
+  const [before, after] = [modelError.drag(start), modelError.drag(end)];
+  const dragged = Math.sign(start) * Math.sign(end) < 0 ? before + after : Math.abs(after - before);
+  item("force-model", Math.hypot(modelError.fieldTruncation(elapsed), modelError.energyRate * lever, dragged), "log");
+  const turned = earthOrientationSigma(setting, elapsed);
+  if (turned > 0) item("earth-orientation", turned, "log");
   // 1e-17 s a segment of the integral (about one an hour), and what the reading of the table costs.
   item(
     "integration",
@@ -51,24 +53,31 @@ function faceStep(face: Face): number | null {
 export const combine = (items: readonly UncertaintyItem[]): number => Math.hypot(...items.map((item) => item.sigma));
 
 /**
- * Orbit: [3 GM/(2 a^2 c^2)] sigma_a dt grows, (2/c^2) sigma(r.v) stays bounded.
- * Source: derivative of the two-body closed form (relativity/closedForm).
+ * Orbit: 3 GM/(2 a^2 c^2) sigma_a over the lever of an energy error grows, (2/c^2) sigma(r.v) stays bounded.
+ * Source: derivative of the two-body closed form (relativity/closedForm) and vis-viva.
  */
-function orbitSigma({ trajectory }: Setting, elapsed: number): number | null {
+function orbitSigma({ trajectory }: Setting, lever: number, elapsed: number): number | null {
   const error = trajectory.orbitError;
   if (error === null) return null;
   const growing =
     error.axis === null || error.semiMajorAxis === null
       ? 0
-      : ((3 * GM_EARTH) / (2 * error.axis * error.axis * C2)) * error.semiMajorAxis * Math.abs(elapsed);
+      : ((3 * GM_EARTH) / (2 * error.axis * error.axis * C2)) * error.semiMajorAxis * lever;
   const bounded = (2 / C2) * (error.positionDotVelocity ?? 0);
   return Math.hypot(growing, elapsed === 0 ? 0 : bounded);
 }
 
 /**
- * What an unknown UT1 does: the equatorial ellipticity acts with a wrong phase. Its effect on time is 8 ps periodic and
- * 600 ps a day at most (measured: a propagated state without C22 and S22); twice the angle of it is in doubt.
+ * What the unknown turn of the Earth does. UT1: its equatorial ellipticity acts with a wrong phase, 8 ps periodic on a
+ * known path and 600 ps a day on a propagated one (measured: a propagated state without C22 and S22). Pole: its oblateness
+ * acts about a wrong axis, 130 ps periodic and 190 ns a day. Twice the angle is in doubt each. On the ground only the tides'
+ * phase is left, 1 ps.
  */
-function earthOrientationSigma(elapsed: number): number {
-  return 2 * unknownRotation * (8e-12 + 600e-12 * (Math.abs(elapsed) / DAY));
+function earthOrientationSigma({ trajectory, given }: Setting, elapsed: number): number {
+  const days = Math.abs(elapsed) / DAY;
+  const onGround = trajectory.kind === "surface" || trajectory.kind === "track";
+  const propagated = trajectory.usesSunMoon ? days : 0;
+  const byRotation = onGround ? 1e-12 : 8e-12 + 600e-12 * propagated;
+  const byPole = onGround ? 1e-12 : 130e-12 + 190e-9 * propagated;
+  return 2 * Math.hypot(given.ut1 ? 0 : unknownRotation * byRotation, given.pole ? 0 : unknownPole * byPole);
 }

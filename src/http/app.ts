@@ -79,12 +79,12 @@ export function createHttpApp({ bench, logger, isStopping }: HttpParts): Express
       (request, response, next) => {
         requireRunning(isStopping, response);
         requireJson(request);
+        requireSize(request, response);
         readBytes(request, response, next);
       },
       (request: Request, response: Response) => {
         const answer = call.answer(parseJson(decode(request.body)), bench);
-        // A connection that outlives its answer would hold up the end of the service.
-        if (isStopping()) response.setHeader("Connection", "close");
+        closeWhenStopping(isStopping, response);
         response.type("application/json").send(JSON.stringify(answer));
       },
     );
@@ -109,6 +109,7 @@ export function createHttpApp({ bench, logger, isStopping }: HttpParts): Express
       return;
     }
     const problem = asProblem(error);
+    closeWhenStopping(isStopping, response);
     if (problem.code === "internal-error")
       request.log.error({ err: error }, "a request failed for a fault of the service");
     response
@@ -136,6 +137,25 @@ function requireRunning(isStopping: () => boolean, response: Response): void {
   throw new Problem("unavailable", "The service is stopping; no new work is begun.");
 }
 
+/** A connection that outlives its answer would hold up the end of the service. */
+function closeWhenStopping(isStopping: () => boolean, response: Response): void {
+  if (isStopping()) response.setHeader("Connection", "close");
+}
+
+/** Refuses what is too large before its body is read. */
+function requireSize(request: Request, response: Response): void {
+  const length = Number(request.headers["content-length"] ?? 0);
+  if (length <= mostBytes) return;
+  response.setHeader("Connection", "close");
+  throw tooLarge();
+}
+
+function tooLarge(): Problem {
+  return new Problem("body-too-large", `The body is larger than ${mostBytes} bytes (16 MiB).`, [
+    { place: [], expected: `at most ${mostBytes} bytes` },
+  ]);
+}
+
 function requireJson(request: Request): void {
   const type = request.headers["content-type"];
   const [media = "", ...parameters] = (type ?? "")
@@ -158,11 +178,7 @@ function requireJson(request: Request): void {
 function asProblem(error: unknown): Problem {
   if (error instanceof Problem) return error;
   const { type, status } = error as { type?: string; status?: number };
-  if (type === "entity.too.large") {
-    return new Problem("body-too-large", `The body is larger than ${mostBytes} bytes (16 MiB).`, [
-      { place: [], expected: `at most ${mostBytes} bytes` },
-    ]);
-  }
+  if (type === "entity.too.large") return tooLarge();
   if (status === 415) {
     return new Problem("unsupported-media-type", (error as Error).message, [
       { place: [], expected: "UTF-8, without Content-Encoding or with gzip, deflate or br" },

@@ -35,6 +35,23 @@ export function interpolateStates(
   }
 }
 
+/** Position and velocity at t, each by Lagrange's polynomial of its own through `points` knots. */
+export function lagrangeStates(
+  times: ArrayLike<number>,
+  values: ArrayLike<number>,
+  firstKnot: number,
+  points: number,
+  t: number,
+  out: Float64Array,
+): void {
+  out.fill(0, 0, 6);
+  for (let i = firstKnot; i < firstKnot + points; i++) {
+    let l = 1;
+    for (let j = firstKnot; j < firstKnot + points; j++) if (j !== i) l *= (t - times[j]!) / (times[i]! - times[j]!);
+    for (let k = 0; k < 6; k++) out[k]! += l * values[6 * i + k]!;
+  }
+}
+
 /** Adds one knot's share, (1 - 2 slope d) l^2 of its position and d l^2 of its velocity, and their derivatives. */
 export function accumulateKnot(
   values: ArrayLike<number>,

@@ -1,8 +1,9 @@
 export { antiderivative, ChebyshevBasis, evaluateSeries } from "./chebyshev.ts";
 export { addToTwoPart, multiplyTwoPart, type TwoPart, twoProduct, twoSum } from "./errorfree.ts";
-export { accumulateKnot, interpolateStates, slopeAtKnot } from "./hermite.ts";
+export { accumulateKnot, interpolateStates, lagrangeStates, slopeAtKnot } from "./hermite.ts";
 export { TabulatedFunction } from "./tabulated.ts";
 export {
+  add,
   axisRotation,
   cross,
   dot,

@@ -5,7 +5,7 @@ import { type Notice, Problem } from "../problem/index.ts";
 import { addSeconds, defaultLeapSeconds, formatInstant, type Instant } from "../time/index.ts";
 import { DAY, GM_EARTH, KM } from "../units/index.ts";
 import { osculatingElements } from "./elements.ts";
-import { fieldTruncation } from "./modelError.ts";
+import { fieldTruncation, leverAlong } from "./modelError.ts";
 import { propagationReach } from "./propagated.ts";
 import type { OrbitError, StateArray, Trajectory } from "./trajectory.ts";
 
@@ -47,6 +47,7 @@ export class MeanElementTrajectory implements Trajectory {
   readonly usesSunMoon = false;
   readonly modelError;
   readonly #record: SatRec;
+  readonly #axis: number;
 
   constructor(elements: MeanElements, axes: EarthAxes) {
     const { epoch } = elements;
@@ -68,7 +69,8 @@ export class MeanElementTrajectory implements Trajectory {
       axis: semiMajorAxis,
       isotropic: false,
     };
-    this.modelError = { fieldTruncation: (dt: number) => fieldTruncation(perigee, dt), propagation: () => 0 };
+    this.modelError = { fieldTruncation: (dt: number) => fieldTruncation(perigee, dt), energyRate: 0, drag: () => 0 };
+    this.#axis = semiMajorAxis;
     this.notices = [
       {
         code: "mean-element-uncertainty",
@@ -93,6 +95,7 @@ export class MeanElementTrajectory implements Trajectory {
   pieceStart = (index: number): number => index * pieceLength;
   // The theory is smooth to a metre only; finer cuts would follow its grain.
   split = (a: number, b: number): number | null => (b - a <= 60 ? null : (a + b) / 2);
+  energyLever = (a: number, b: number): number => leverAlong(this, this.#axis, a, b);
   interpolationError = (): number => 0;
 
   #gaveUp(t: number): Problem {

@@ -1,5 +1,5 @@
 import type { EarthAxes } from "../bodies/index.ts";
-import { invariant, type Notice } from "../problem/index.ts";
+import { invariant, type Notice, type Problem } from "../problem/index.ts";
 import { type Instant, secondsBetween } from "../time/index.ts";
 import type { ModelError, OrbitError, StateArray, Trajectory } from "./trajectory.ts";
 
@@ -29,7 +29,7 @@ export class PhasedTrajectory implements Trajectory {
   readonly kind = "phases";
   readonly reference: Instant;
   readonly from = 0;
-  readonly to: number;
+  to: number;
   readonly first: Instant;
   readonly last: Instant | null;
   readonly axes: EarthAxes;
@@ -74,7 +74,8 @@ export class PhasedTrajectory implements Trajectory {
     this.orbitError = worst(trajectories);
     this.modelError = {
       fieldTruncation: (dt) => Math.max(...trajectories.map(({ modelError }) => modelError.fieldTruncation(dt))),
-      propagation: (t) => this.#grown(t),
+      energyRate: Math.max(...trajectories.map(({ modelError }) => modelError.energyRate)),
+      drag: (t) => this.#dragged(t),
     };
   }
 
@@ -82,13 +83,22 @@ export class PhasedTrajectory implements Trajectory {
     for (const { trajectory, start, end, shift } of this.#parts) {
       const a = Math.max(from, start);
       const b = Math.min(to, end);
-      if (a <= b) trajectory.extend(a + shift, b + shift);
+      if (a > b) continue;
+      trajectory.extend(a + shift, b + shift);
+      // A part that ends by itself ends the whole path, for there is no way on.
+      if (trajectory.to - shift < end) this.to = Math.min(this.to, trajectory.to - shift);
     }
   }
 
   state(t: number, out: StateArray): void {
     const { trajectory, shift } = this.#partAt(t);
     trajectory.state(t + shift, out);
+  }
+
+  leaves(t: number): Problem {
+    const { trajectory, shift } = this.#partAt(t);
+    invariant(trajectory.leaves !== undefined, "only a propagated part can end by itself");
+    return trajectory.leaves(t + shift);
   }
 
   pieceOf(t: number): number {
@@ -110,11 +120,20 @@ export class PhasedTrajectory implements Trajectory {
   }
 
   interpolationError(a: number, b: number): number {
+    return this.#sum(a, b, (trajectory, from, to) => trajectory.interpolationError(from, to));
+  }
+
+  energyLever(a: number, b: number): number {
+    return this.#sum(a, b, (trajectory, from, to) => trajectory.energyLever(from, to));
+  }
+
+  /** Adds up what `value` gives for each part between a and b, on the part's own axis. */
+  #sum(a: number, b: number, value: (trajectory: Trajectory, from: number, to: number) => number): number {
     const [low, high] = a < b ? [a, b] : [b, a];
     let total = 0;
     for (const { trajectory, start, end, shift } of this.#parts) {
       const [from, to] = [Math.max(low, start), Math.min(high, end)];
-      if (from < to) total += Math.abs(trajectory.interpolationError(from + shift, to + shift));
+      if (from < to) total += value(trajectory, from + shift, to + shift);
     }
     return total;
   }
@@ -124,17 +143,15 @@ export class PhasedTrajectory implements Trajectory {
     return this.#parts.findLast(({ start }) => start <= t) ?? this.#parts[0]!;
   }
 
-  /** What incomplete forces have done to the time from the start to t, phase by phase. */
-  #grown(t: number): number {
+  /** What drag has done to the time from the start to t, phase by phase. */
+  #dragged(t: number): number {
     let total = 0;
     for (const { trajectory, start, end, shift } of this.#parts) {
       const until = Math.min(t, end);
       if (until <= start) break;
-      const a = start + shift;
-      const b = until + shift;
-      const before = trajectory.modelError.propagation(a);
-      const after = trajectory.modelError.propagation(b);
-      total += a < 0 && b > 0 ? before + after : Math.abs(after - before);
+      const [a, b] = [start + shift, until + shift];
+      const { drag } = trajectory.modelError;
+      total += a < 0 && b > 0 ? drag(a) + drag(b) : Math.abs(drag(b) - drag(a));
     }
     return total;
   }

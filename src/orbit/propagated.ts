@@ -5,7 +5,7 @@ import { addSeconds, defaultLeapSeconds, formatInstant, type Instant } from "../
 import { DAY, GM_EARTH } from "../units/index.ts";
 import { type OsculatingElements, osculatingElements } from "./elements.ts";
 import { ForceModel } from "./forces.ts";
-import { fieldTruncation, propagationError } from "./modelError.ts";
+import { fieldTruncation, leverAlong, propagationError } from "./modelError.ts";
 import { SteppedPath } from "./summedMultistep.ts";
 import type { OrbitError, StateArray, Trajectory } from "./trajectory.ts";
 
@@ -13,7 +13,7 @@ import type { OrbitError, StateArray, Trajectory } from "./trajectory.ts";
 export const propagationReach = 400 * DAY;
 
 /** Nearer to the centre than this nothing is propagated: the state was not what was meant, and steps would vanish. */
-const innermost = 1_000e3;
+export const innermost = 1_000e3;
 /** Further out the geocentric formula gives way to the barycentric one. */
 export const outermost = 1_500_000e3;
 
@@ -31,8 +31,9 @@ const knotSlopes = [-11 / 6, -1 / 2, 1 / 2, 11 / 6];
 export class PropagatedTrajectory implements Trajectory {
   readonly kind = "state-vector";
   readonly reference: Instant;
-  readonly from = -propagationReach;
-  readonly to = propagationReach;
+  /** Shorter than the reach once the path is known to leave the region of the model. */
+  from = -propagationReach;
+  to = propagationReach;
   readonly first: Instant;
   readonly last: Instant;
   readonly axes: EarthAxes;
@@ -44,6 +45,7 @@ export class PropagatedTrajectory implements Trajectory {
   readonly modelError;
   readonly #path: SteppedPath;
   readonly #stepsPerPiece: number;
+  readonly #axis: number;
 
   /** Position and velocity at `epoch` in GCRF, m and m/s. */
   constructor(
@@ -64,18 +66,52 @@ export class PropagatedTrajectory implements Trajectory {
     const step = stepFor(elements, position);
     this.#path = new SteppedPath(step, new ForceModel(epoch, axes), position, velocity);
     this.#stepsPerPiece = 64;
+    this.#axis = elements.semiMajorAxis;
     this.modelError = {
       fieldTruncation: (dt: number) => fieldTruncation(elements.perigee, dt),
-      propagation: (t: number) => propagationError(elements, t),
+      ...propagationError(elements),
     };
   }
 
   extend(from: number, to: number): void {
     const h = this.#path.step;
     if (Math.max(-from, to) / h > mostSteps) throw tooLow(h);
-    const check = (index: number, states: Float64Array, at: number) => this.#check(index, states, at);
-    this.#path.growTo(Math.floor(to / h) + 3, check);
-    this.#path.growTo(Math.floor(from / h) - 2, check);
+    const after = Math.floor(to / h) + 3;
+    const before = Math.floor(from / h) - 2;
+    const reachedAfter = this.#path.growTo(Math.max(0, after), belongs);
+    const reachedBefore = this.#path.growTo(Math.min(-1, before), belongs);
+    // Three steps short of the last good state, so that every interval has its knots.
+    if (reachedAfter < after) this.to = Math.min(this.to, (reachedAfter - 3) * h);
+    if (reachedBefore > before) this.from = Math.max(this.from, (reachedBefore + 3) * h);
+  }
+
+  bytes(): number {
+    return this.#path.statesOf(0).byteLength + this.#path.statesOf(-1).byteLength;
+  }
+
+  /** Why the path ends where it does, when that is before its reach. */
+  leaves(t: number): Problem {
+    const end = t > 0 ? this.to : this.from;
+    const state = new Float64Array(6);
+    this.state(end, state);
+    const r = Math.hypot(state[0]!, state[1]!, state[2]!);
+    const when = formatInstant(addSeconds(this.reference, end), "TAI", defaultLeapSeconds);
+    const meant = this.notices.find(({ code }) => code === "implausible-orbit")?.text ?? "";
+    const where =
+      r < outermost / 2
+        ? `inside of the Earth (${Math.round(r / 1000)} km from its centre at ${when} TAI). ${meant}`.trim()
+        : `border of the Earth's surroundings (${Math.round(r / 1000)} km away at ${when} TAI), where the geocentric model ends.`;
+    return new Problem(
+      "impossible-state",
+      `The propagated path reaches the ${where}`,
+      [
+        {
+          place: ["trajectory", "velocityKmPerS"],
+          expected: "a state whose path stays outside the Earth and within 1 500 000 km of it, or readings before that",
+        },
+      ],
+      true,
+    );
   }
 
   state(t: number, out: StateArray): void {
@@ -116,30 +152,19 @@ export class PropagatedTrajectory implements Trajectory {
     return last - first < 2 ? null : Math.floor((first + last) / 2) * h;
   }
 
+  energyLever(a: number, b: number): number {
+    return leverAlong(this, this.#axis, a, b);
+  }
+
   interpolationError(a: number, b: number): number {
     // 0.001 ps in ten days, the bound that step halving holds for every class of orbit (test/orbit/propagated).
     return (1e-15 / (10 * DAY)) * Math.abs(b - a);
   }
+}
 
-  #check(index: number, states: Float64Array, at: number): void {
-    const r = Math.hypot(states[at]!, states[at + 1]!, states[at + 2]!);
-    if (r > innermost && r < outermost) return;
-    const when = formatInstant(addSeconds(this.reference, index * this.#path.step), "TAI", defaultLeapSeconds);
-    const meant = this.notices.find((notice) => notice.code === "implausible-orbit")?.text ?? "";
-    throw new Problem(
-      "impossible-state",
-      r < innermost
-        ? `The propagated path reaches the inside of the Earth (${Math.round(r / 1000)} km from its centre at ${when} TAI). ${meant}`.trim()
-        : `The propagated path leaves the surroundings of the Earth (${Math.round(r / 1000)} km away at ${when} TAI), where the geocentric model holds.`,
-      [
-        {
-          place: ["trajectory", "velocityKmPerS"],
-          expected: "a state whose path stays outside the Earth and within 1 500 000 km of it",
-        },
-      ],
-      true,
-    );
-  }
+function belongs(states: Float64Array, at: number): boolean {
+  const r = Math.hypot(states[at]!, states[at + 1]!, states[at + 2]!);
+  return r > innermost && r < outermost;
 }
 
 /** A whole number of seconds in which the fastest part of the orbit turns by about 0.05 rad. */

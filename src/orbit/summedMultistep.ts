@@ -64,6 +64,7 @@ class Branch {
   readonly #trial = new Float64Array(3);
   states: Float64Array;
   count: number;
+  ended = false;
 
   constructor(h: number, force: ForceModel, start: Float64Array) {
     this.#h = h;
@@ -205,14 +206,20 @@ export class SteppedPath {
     this.#backward = new Branch(-step, force, reversed);
   }
 
-  /** Grows the path to step `index`; `check` sees each new state (its array and place) and may throw. */
-  growTo(index: number, check: (index: number, states: Float64Array, at: number) => void): void {
+  /**
+   * Grows the path towards step `index`, as long as `belongs` accepts each new state (its array and place). A state that
+   * is not accepted is not kept, and the path ends before it for good. Gives the last step that there is on that side.
+   */
+  growTo(index: number, belongs: (states: Float64Array, at: number) => boolean): number {
     const branch = index >= 0 ? this.#forward : this.#backward;
-    while (branch.count <= Math.abs(index)) {
+    while (!branch.ended && branch.count <= Math.abs(index)) {
       branch.advance();
-      const last = branch.count - 1;
-      check(index >= 0 ? last : -last, branch.states, 6 * last);
+      if (belongs(branch.states, 6 * (branch.count - 1))) continue;
+      branch.count--;
+      branch.ended = true;
     }
+    const last = branch.ended ? Math.min(branch.count - 1, Math.abs(index)) : Math.abs(index);
+    return index >= 0 ? last : -last;
   }
 
   /** The array that holds a step and the place of its first element. */

@@ -13,7 +13,7 @@ function halve(a: number, b: number): number | null {
 
 /** One sigma of the height in doubt, m, as a rate g/c^2 per metre (1.09e-16). */
 function heightTruncation(metres: number): ModelError {
-  return { fieldTruncation: (dt) => metres * 1.09e-16 * Math.abs(dt), propagation: () => 0 };
+  return { fieldTruncation: (dt) => metres * 1.09e-16 * Math.abs(dt), energyRate: 0, drag: () => 0 };
 }
 
 /** Writes an Earth-fixed position and velocity to `out` in GCRF. */
@@ -65,6 +65,7 @@ export class SurfaceTrajectory implements Trajectory {
   pieceOf = (t: number): number => Math.floor(t / pieceLength);
   pieceStart = (index: number): number => index * pieceLength;
   split = halve;
+  energyLever = (a: number, b: number): number => Math.abs(b - a);
   interpolationError = (): number => 0;
 }
 
@@ -129,6 +130,7 @@ export class TrackTrajectory implements Trajectory {
   }
 
   split = halve;
+  energyLever = (a: number, b: number): number => Math.abs(b - a);
   interpolationError = (): number => 0;
 }
 

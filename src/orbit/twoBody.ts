@@ -12,16 +12,17 @@ export interface KeplerianElements {
   readonly meanAnomaly: number;
 }
 
-/** Eccentric anomaly, rad, for an eccentricity below 1. Newton's iteration from Danby's start; to rounding. */
+/** Eccentric anomaly, rad, in the same turn as the mean one, for an eccentricity below 1. Newton's iteration from Danby's start; to rounding. */
 export function eccentricAnomaly(meanAnomaly: number, eccentricity: number): number {
-  const m = meanAnomaly % (2 * Math.PI);
+  const turns = 2 * Math.PI * Math.round(meanAnomaly / (2 * Math.PI));
+  const m = meanAnomaly - turns;
   let e = m + 0.85 * eccentricity * Math.sign(Math.sin(m));
   for (let i = 0; i < 50; i++) {
     const step = (e - eccentricity * Math.sin(e) - m) / (1 - eccentricity * Math.cos(e));
     e -= step;
     if (Math.abs(step) < 1e-15) break;
   }
-  return e;
+  return e + turns;
 }
 
 /**

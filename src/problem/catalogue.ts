@@ -104,10 +104,15 @@ export type ProblemCode = keyof typeof problemCatalogue;
 /** Remarks that travel with a good answer. They never change a number; they say how far to trust it. */
 export const noticeCatalogue = {
   "terms-left-out": "Physical terms that the request left out; they are neither computed nor summed.",
+  "anchor-uncertainty-not-given": "No uncertainty was given for the anchor; none is invented, so none is included.",
+  "oscillator-uncertainty-not-given":
+    "No uncertainty was given for the oscillator; its drift is not in the uncertainty.",
   "orbit-uncertainty-not-given": "No uncertainty was given for the orbit; none is invented, so none is included.",
   "isotropic-orbit-uncertainty": "One sigma for every direction: the orbit's contribution is an upper bound.",
   "implausible-orbit": "The orbit is hardly what was meant; the text says what probably was.",
   "mean-element-uncertainty": "Mean elements bring no uncertainty; the usual size is assumed and said.",
+  "segments-apart": "An ephemeris has gaps between its segments; only the run that holds the anchor is used.",
+  "message-remark": "A remark on an orbit message that was read all the same.",
   "coarse-ephemeris": "The table is too coarse for its orbit; the estimated interpolation error is in the uncertainty.",
   "velocities-derived": "The table has no velocities; they were derived from its positions.",
   "earth-orientation-not-given":

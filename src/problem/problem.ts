@@ -70,8 +70,7 @@ export function forEachItem<T, R>(place: Place, items: readonly T[], work: (item
   }
   const first = problems[0];
   if (first === undefined) return results;
-  const alike = problems.filter((problem) => problem.code === first.code);
-  const faults = alike.flatMap((problem) => problem.faults).slice(0, mostFaults);
+  const faults = problems.flatMap((problem) => problem.faults).slice(0, mostFaults);
   const others = faults.length > 1 ? ` (${faults.length} faults in all; this is the first)` : "";
   throw new Problem(first.code, `${first.message}${others}`, faults);
 }

@@ -1,5 +1,5 @@
 import { antiderivative, ChebyshevBasis, evaluateSeries } from "../numeric/index.ts";
-import type { Trajectory } from "../orbit/index.ts";
+import { innermost, type Trajectory } from "../orbit/index.ts";
 import { invariant, Problem } from "../problem/index.ts";
 import { C2 } from "../units/index.ts";
 import { EnvironmentReader, type Need } from "./environment.ts";
@@ -12,8 +12,6 @@ const points = degree + 1;
 const width = points + 1;
 /** A segment is good when what its last two coefficients leave is below this, s of accumulated time. */
 const tolerance = 1e-17;
-/** No clock is nearer to the Earth's centre than this, m; a propagated state ends there too. */
-const innermost = 990e3;
 
 /** A stretch on which every integrated term is one series. */
 interface Segment {
@@ -49,6 +47,7 @@ export class ProperTime {
   /** First and last piece that are built; empty while first > last. */
   #first: number;
   #last: number;
+  #segments = 0;
   /** The start that was asked for last: nearly always the anchor. */
   #lastFrom = Number.NaN;
   #lastFromValues: Float64Array = new Float64Array(0);
@@ -65,9 +64,15 @@ export class ProperTime {
     this.#samples = this.#integrated.map(() => new Float64Array(points));
   }
 
+  /** Memory held by the integral and its path, roughly. */
+  get bytes(): number {
+    return this.#segments * 8 * (this.#integrated.length * (width + 2) + 16) + (this.trajectory.bytes?.() ?? 0);
+  }
+
   /** Rate of every term at t, dimensionless. */
   rates(t: number): number[] {
     this.trajectory.extend(t, t);
+    if (t < this.trajectory.from || t > this.trajectory.to) throw this.#beyond(t);
     const environment = this.#reader.read(t);
     return this.terms.map((term) => term.rate(environment));
   }
@@ -87,9 +92,10 @@ export class ProperTime {
 
   #accumulated(t: number): Float64Array {
     const { trajectory } = this;
-    invariant(t >= trajectory.from && t <= trajectory.to, "accumulated time is asked for inside the span only");
+    if (t < trajectory.from || t > trajectory.to) throw this.#beyond(t);
     const index = this.#pieceOf(t);
     this.#buildTo(index);
+    if (t < trajectory.from || t > trajectory.to) throw this.#beyond(t);
     const piece = this.#pieces.get(index)!;
     let low = 0;
     let high = piece.segments.length;
@@ -105,6 +111,12 @@ export class ProperTime {
       out[k] = piece.before[low]![k]! + evaluateSeries(segment.series, x, k * width, width);
     }
     return out;
+  }
+
+  #beyond(t: number): Error {
+    const { trajectory } = this;
+    invariant(trajectory.leaves !== undefined, "time is accumulated inside the span only");
+    return trajectory.leaves(t);
   }
 
   /** The piece that holds t; the very end of a trajectory belongs to the piece before it, when none begins there. */
@@ -131,9 +143,14 @@ export class ProperTime {
   /** The segments of one piece in order of time. */
   #integrate(index: number): Segment[] {
     const { trajectory } = this;
+    trajectory.extend(
+      Math.max(trajectory.from, trajectory.pieceStart(index)),
+      Math.min(trajectory.to, trajectory.pieceStart(index + 1)),
+    );
+    // Extending may have found that the path ends inside the piece.
     const start = Math.max(trajectory.from, trajectory.pieceStart(index));
     const end = Math.min(trajectory.to, trajectory.pieceStart(index + 1));
-    trajectory.extend(start, end);
+    if (!(start < end)) throw this.#beyond(end);
     const out: Segment[] = [];
     const waiting: [number, number][] = [[start, end]];
     while (waiting.length > 0) {
@@ -142,6 +159,7 @@ export class ProperTime {
       if (typeof segment === "number") waiting.push([segment, b], [a, segment]);
       else out.push(segment);
     }
+    this.#segments += out.length;
     return out;
   }
 
@@ -153,7 +171,7 @@ export class ProperTime {
       // At the very ends of a stretch the points stay inside it.
       const environment = this.#reader.read(a + halfLength * (1 + basis.points[p]!));
       if (!(environment.speedSquared < C2)) throw impossiblePath("the path would reach the speed of light");
-      if (!(environment.distance > innermost)) throw impossiblePath("the path would pass through the Earth");
+      if (!(environment.distance > innermost - 10e3)) throw impossiblePath("the path would pass through the Earth");
       for (let k = 0; k < count; k++) this.#samples[k]![p] = this.#integrated[k]!.term.rate(environment);
     }
     const series = new Float64Array(this.#integrated.length * width);

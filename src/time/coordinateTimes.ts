@@ -3,8 +3,7 @@ import type { Instant } from "./instant.ts";
 import { geocentricTdbMinusTt, roughTdbMinusTt } from "./tdbMinusTt.ts";
 
 /** The scales whose second is not that of TAI. */
-export const coordinateTimes = ["TCG", "TDB", "TCB"] as const;
-export type CoordinateTime = (typeof coordinateTimes)[number];
+export type CoordinateTime = "TCG" | "TDB" | "TCB";
 
 /**
  * 1977-01-01T00:00:00 TAI, where TT, TCG and TCB read the same (JD 2443144.5003725 in each), in TAI seconds since 1970.

@@ -155,7 +155,8 @@ function outOfRange(text: string): Problem {
   ]);
 }
 
-const two = (n: number): string => (n < 10 ? `0${n}` : `${n}`);
+const twoDigits = Array.from({ length: 100 }, (_, n) => String(n).padStart(2, "0"));
+const two = (n: number): string => twoDigits[n]!;
 
 /** The instant in a scale, with twelve decimals; UTC ends in Z. The inverse of parseInstant. */
 export function formatInstant(instant: Instant, scale: Scale, leapSeconds: LeapSecondTable): string {
@@ -192,7 +193,7 @@ export function formatInstant(instant: Instant, scale: Scale, leapSeconds: LeapS
   const second = secondOfDay - hour * 3600 - minute * 60;
   const fraction = String(picoseconds).padStart(12, "0");
   const suffix = scale === "UTC" ? "Z" : "";
-  return `${String(date.year).padStart(4, "0")}-${two(date.month)}-${two(date.day)}T${two(hour)}:${two(minute)}:${two(second)}.${fraction}${suffix}`;
+  return `${date.year > 999 ? date.year : String(date.year).padStart(4, "0")}-${two(date.month)}-${two(date.day)}T${two(hour)}:${two(minute)}:${two(second)}.${fraction}${suffix}`;
 }
 
 /** Whether a moment lies inside a positive leap second. */

@@ -5,6 +5,7 @@ import {
   type Footing,
   isInside,
   makeEvidence,
+  orientationGiven,
   outsideSpan,
   settingNotices,
   type TermBudget,
@@ -55,7 +56,7 @@ export function driftBudgets(body: unknown, bench: Bench): BudgetResponse {
     trajectory: properTime.trajectory,
     properTime,
     leapSeconds,
-    earthOrientationGiven: orientation.ut1MinusUtc !== null,
+    given: orientationGiven(orientation),
   };
   const basis = basisOf(request);
   return {

@@ -2,6 +2,7 @@ import {
   buildProperTime,
   type ClockState,
   canonicalDigest,
+  clockNotices,
   correctReading,
   makeEvidence,
   makeSetting,
@@ -169,6 +170,8 @@ function close(
   return {
     ...(setting.basis === null ? {} : { basis: setting.basis }),
     evidence: makeEvidence(request, setting, bench.version),
-    notices: [...settingNotices(setting, expired), ...scaleNotices(request)].map(writeNotice),
+    notices: [...clockNotices(setting.clock), ...settingNotices(setting, expired), ...scaleNotices(request)].map(
+      writeNotice,
+    ),
   };
 }

@@ -1,6 +1,6 @@
 import type { Oscillator } from "../clock/index.ts";
 import type { Clock, GivenOrientation, PathRequest, Reading } from "../correction/index.ts";
-import type { StateError, TrajectoryDescription } from "../orbit/index.ts";
+import type { Center, Frame, StateError, TrajectoryDescription } from "../orbit/index.ts";
 import { at, forEachItem, Problem } from "../problem/index.ts";
 import {
   addDurations,
@@ -138,6 +138,13 @@ export function readTrajectory(
     at(place, () => readInstant(value, leapSeconds));
   switch (given.kind) {
     case "state-vector":
+      if (readCenter(given) !== "Earth") {
+        throw new Problem(
+          "impossible-state",
+          "A state about the Moon is not propagated; the forces there are not modelled.",
+          [{ place: ["center"], received: given.center, expected: '"Earth", or a state-table about the Moon' }],
+        );
+      }
       return {
         kind: given.kind,
         frame: given.frame,
@@ -150,6 +157,7 @@ export function readTrajectory(
       return {
         kind: given.kind,
         frame: given.frame,
+        center: readCenter(given),
         states: forEachItem(["states"], given.states, (state) => ({
           epoch: instant(state.epoch, "epoch"),
           position: scaled(state.positionKm, KM),
@@ -170,6 +178,16 @@ export function readTrajectory(
   }
 }
 
+/** Errors: impossible-state for axes that turn with the Earth about another body. */
+function readCenter({ center = "Earth", frame }: { center?: Center | undefined; frame: Frame }): Center {
+  if (center === "Moon" && !["GCRF", "ICRF", "EME2000"].includes(frame)) {
+    throw new Problem("impossible-state", `${frame} is no frame about the Moon.`, [
+      { place: ["frame"], received: frame, expected: "ICRF, GCRF or EME2000" },
+    ]);
+  }
+  return center;
+}
+
 /** Where a trajectory begins of itself: its epoch or first state. Null for a clock that rests on the ground. */
 export function startOf(trajectory: TrajectoryDescription): Instant | null {
   switch (trajectory.kind) {
@@ -177,6 +195,8 @@ export function startOf(trajectory: TrajectoryDescription): Instant | null {
       return trajectory.epoch;
     case "state-table":
       return trajectory.states[0]!.epoch;
+    case "ephemeris":
+      return trajectory.segments[0]!.first;
     case "track":
       return trajectory.points[0]!.at;
     case "surface":

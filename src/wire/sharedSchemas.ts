@@ -12,7 +12,8 @@ export const sigma = z.number().min(0).max(1e12);
 export const magnitude = z.number().min(0);
 
 export const scaleSchema = z.enum(scales).openapi("Scale", {
-  description: "Time scale. UTC has leap seconds; TAI, TT and GPS run evenly beside it.",
+  description:
+    "Time scale. UTC and GLONASS have leap seconds; the others run evenly, TCG, TDB and TCB at rates of their own.",
 });
 
 export const instantSchema = z
@@ -29,10 +30,7 @@ export const instantSchema = z
 /** What a clock showed. Its text is read by the clock's own face, so only its size is bound here. */
 export const readingSchema = z
   .union(
-    [
-      z.int().openapi({ minimum: Number.MIN_SAFE_INTEGER, maximum: Number.MAX_SAFE_INTEGER }),
-      z.string().max(120),
-    ],
+    [z.int().openapi({ minimum: Number.MIN_SAFE_INTEGER, maximum: Number.MAX_SAFE_INTEGER }), z.string().max(120)],
     "a whole number up to 2^53 - 1, or text: decimal digits of any size for a counter, a time as the clock writes it for a stamp",
   )
   .openapi("Reading", {

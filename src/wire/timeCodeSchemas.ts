@@ -9,7 +9,7 @@ const pField = z
   .optional()
   .openapi({ description: "Whether the code begins with its P-field; false when left out." });
 
-export const cucFormatSchema = z
+const cucFormatSchema = z
   .strictObject({
     format: z.literal("CUC"),
     coarseOctets: z.int().min(1).max(7).openapi({ description: "Octets of whole seconds." }),
@@ -19,7 +19,7 @@ export const cucFormatSchema = z
   })
   .openapi("CucFormat", { description: "Unsegmented code: seconds of TAI since the epoch, without leap seconds." });
 
-export const cdsFormatSchema = z
+const cdsFormatSchema = z
   .strictObject({
     format: z.literal("CDS"),
     dayOctets: z.union([z.literal(2), z.literal(3)], "2 or 3"),
@@ -34,7 +34,7 @@ export const cdsFormatSchema = z
       "Day-segmented code: UTC days and milliseconds of the day, up to 86400999 where a leap second ends it.",
   });
 
-export const ccsFormatSchema = z
+const ccsFormatSchema = z
   .strictObject({
     format: z.literal("CCS"),
     variant: z.enum(["month-day", "day-of-year"]),

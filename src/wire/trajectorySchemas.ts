@@ -7,7 +7,9 @@ const frameSchema = z.enum(frames).openapi("Frame", {
     "GCRF: geocentric celestial. EME2000: mean equator and equinox of J2000.0. ICRF: axes of GCRF, centre Earth. ITRF: Earth-fixed, its velocity relative to the rotating Earth.",
 });
 
-const center = z.literal("Earth").optional();
+const center = z.enum(["Earth", "Moon"]).optional().openapi({
+  description: "About what the states are given; the Moon only for tables, with the axes of ICRF, GCRF or EME2000.",
+});
 
 const stateVectorSchema = z
   .strictObject({

@@ -311,7 +311,7 @@ const shapes: readonly Case[] = [
   ),
   orbit("an unknown frame", "/trajectory/frame", "MARS2000", /GCRF.*EME2000.*ICRF.*ITRF/),
   orbit("no frame", "/trajectory/frame", undefined, /GCRF.*missing/),
-  orbit("the centre Moon", "/trajectory/center", "Moon", /Earth/),
+  orbit("the centre Mars", "/trajectory/center", "Mars", /Earth/),
   orbit("a position of two components", "/trajectory/positionKm", [7000, 0], /3/),
   orbit("a position of four components", "/trajectory/positionKm", [7000, 0, 0, 0], /3/),
   orbit("a position as text", "/trajectory/positionKm/1", "0", /number/),
@@ -675,6 +675,13 @@ const trajectories: readonly Case[] = [
   stateCase("thousands of kilometres", withOrbit(position, [6.9, 0, 0]), position, /inside the Earth/),
   stateCase("metres instead of km", withOrbit(position, [6_901_000, 0, 0]), position, /[Mm]etres/),
   stateCase("a zero vector", withOrbit(position, [0, 0, 0]), position, /inside the Earth/),
+  stateCase("a state about the Moon", withOrbit("/trajectory/center", "Moon"), "/trajectory/center", /state-table/),
+  stateCase(
+    "Earth-fixed axes about the Moon",
+    altered(table("/trajectory/center", "Moon"), "/trajectory/frame", "ITRF"),
+    "/trajectory/frame",
+    /ICRF/,
+  ),
   stateCase("a path that falls into the Earth", withOrbit(velocity, [0, 0, 0]), velocity, /inside of the Earth/),
   stateCase("a path that leaves the Earth", withOrbit(velocity, [0, 5000, 0]), velocity, /1 500 000 km|surroundings/),
   stateCase(

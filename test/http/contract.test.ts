@@ -235,7 +235,7 @@ describe("what an option does", () => {
       trajectory: trajectories["state-vector with covariance"],
       ...shared["earthOrientation, whole"],
     });
-    expect(notices(known)).toEqual([]);
+    expect(notices(known)).toEqual(["anchor-uncertainty-not-given", "oscillator-uncertainty-not-given"]);
     expect(known.results[0].uncertainty.map(({ source }: Body) => source)).toContain("orbit");
     expect(notices(await correct({ trajectory: circleTable(40, 120, false) }))).toContain("velocities-derived");
   });

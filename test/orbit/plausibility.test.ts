@@ -16,7 +16,7 @@ function table(components: "inertial" | "earth-fixed", frame: "GCRF" | "ITRF", w
       components === "inertial" ? inertial : axes.toEarthFixed(60 * i, inertial.position, inertial.velocity);
     return { epoch: addSeconds(epoch, 60 * i), position, velocity: withVelocity ? velocity : null };
   });
-  return buildTrajectory({ kind: "state-table", frame, states }, orientation, epoch);
+  return buildTrajectory({ kind: "state-table", frame, center: "Earth", states }, orientation, epoch);
 }
 
 const meantOf = (trajectory: { notices: readonly { code: string; text: string }[] }): string =>

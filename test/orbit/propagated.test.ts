@@ -75,7 +75,7 @@ describe("a propagated state", () => {
     const half = trajectory.pieceStart(1) / 64 / 2;
     const path = new SteppedPath(half, new ForceModel(epoch, axes), position, velocity);
     const count = Math.ceil(span / half) + 2;
-    path.growTo(count, () => {});
+    path.growTo(count, () => true);
     const times = Float64Array.from({ length: count }, (_, i) => i * half);
     const table = new TableTrajectory(
       epoch,

@@ -18,7 +18,7 @@ export function twoBodyTable(elements: KeplerianElements, step: number, count: n
     epoch: addSeconds(moment, step * i),
     ...twoBodyState(elements, step * i),
   }));
-  return buildTrajectory({ kind: "state-table", frame: "GCRF", states }, noOrientation, moment);
+  return buildTrajectory({ kind: "state-table", center: "Earth", frame: "GCRF", states }, noOrientation, moment);
 }
 
 const restingTerms = termsNamed("velocity", "earth-monopole", "earth-oblateness", "earth-higher", "reference-surface");

@@ -42,7 +42,11 @@ export interface Comparison {
 export function gnssTrajectory(points: readonly OrbitPoint[], ut1 = ut1MinusUtc): Trajectory {
   const states = points.map(({ epoch, position }) => ({ epoch, position, velocity: null }));
   const orientation = { ut1MinusTai: ut1 - 37, xPole: 0, yPole: 0 };
-  return buildTrajectory({ kind: "state-table", frame: "ITRF", states }, orientation, points[0]!.epoch);
+  return buildTrajectory(
+    { kind: "state-table", center: "Earth", frame: "ITRF", states },
+    orientation,
+    points[0]!.epoch,
+  );
 }
 
 /** -2 r.v/c^2 at a time of a trajectory, s. */

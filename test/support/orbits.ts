@@ -40,7 +40,8 @@ export function twoBodyTrajectory(elements: KeplerianElements, pieceLength = 360
     coarse: false,
     orbitError: null,
     usesSunMoon: false,
-    modelError: { fieldTruncation: () => 0, propagation: () => 0 },
+    modelError: { fieldTruncation: () => 0, energyRate: 0, drag: () => 0 },
+    energyLever: (a, b) => Math.abs(b - a),
     extend() {},
     state(t, out) {
       const { position, velocity } = twoBodyState(elements, t);

@@ -1,0 +1,198 @@
+import { lineChecksum } from "../../src/formats/index.ts";
+
+/** Messages that were made up for these tests: objects, people and numbers that exist nowhere. */
+
+export const inventedOem = `CCSDS_OEM_VERS = 3.0
+COMMENT  Folded on a rainy Sunday
+CLASSIFICATION = TOY
+CREATION_DATE = 2033-03-03T03:03:03
+ORIGINATOR = NOBODY
+MESSAGE_ID = BOAT-1
+
+META_START
+COMMENT A paper boat
+OBJECT_NAME = PAPER BOAT 7
+OBJECT_ID = 2033-999Z
+CENTER_NAME = EARTH
+REF_FRAME = GCRF
+TIME_SYSTEM = TAI
+START_TIME = 2033-03-03T00:00:00
+USEABLE_START_TIME = 2033-03-03T00:01:00
+USEABLE_STOP_TIME = 2033-03-03T00:02:00
+STOP_TIME = 2033-03-03T00:03:00
+INTERPOLATION = HERMITE
+INTERPOLATION_DEGREE = 3
+META_STOP
+
+COMMENT It floats
+2033-03-03T00:00:00 7000.5 1 -2 0.25 7.5 -0.125
+2033-03-03T00:01:00 7001.5 2 -3 0.25 7.5 -0.25
+2033-062T00:02:00.5 7002.5 3 -4 0.25 7.5 -0.5
+2033-03-03T00:03:00 7003.5 4 -5 0.25 7.5 -1
+
+COVARIANCE_START
+COMMENT Damp
+EPOCH = 2033-03-03T00:01:00
+COV_REF_FRAME = RTN
+1
+2 3
+4 5 6
+7 8 9 10
+11 12 13 14 15
+16 17 18 19 20 21
+EPOCH = 2033-03-03T00:02:00
+1
+2 3
+4 5 6
+7 8 9 10
+11 12 13 14 15
+16 17 18 19 20 2.1e1
+COVARIANCE_STOP
+
+META_START
+OBJECT_NAME = PAPER BOAT 7
+OBJECT_ID = 2033-999Z
+CENTER_NAME = EARTH
+REF_FRAME = GCRF
+TIME_SYSTEM = TAI
+START_TIME = 2033-03-03T00:02:00
+STOP_TIME = 2033-03-03T00:04:00
+META_STOP
+2033-03-03T00:02:00 7000 0 0 0 7 0 1e-3 -2E-3 +3e-3
+2033-03-03T00:04:00 7000 0 0 0 7 0 1e-3 -2E-3 .3
+`;
+
+export const inventedOpm = `CCSDS_OPM_VERS = 2.0
+COMMENT Straight out of a bottle
+CREATION_DATE = 2033-062T03:03:03Z
+ORIGINATOR = NOBODY
+
+OBJECT_NAME = MESSAGE IN A BOTTLE
+OBJECT_ID = 2033-998Y
+CENTER_NAME = EARTH
+REF_FRAME = TOD
+REF_FRAME_EPOCH = 2033-01-01T00:00:00
+TIME_SYSTEM = GPS
+
+COMMENT Where it was
+EPOCH = 2033-03-03T00:00:00.123456789012
+X = 8000.5 [km]
+Y = -10 [km]
+Z = 20.25 [km]
+X_DOT = 0.5 [km/s]
+Y_DOT = 7 [km/s]
+Z_DOT = -1 [km/s]
+SEMI_MAJOR_AXIS = 8100 [km]
+ECCENTRICITY = 0.0125
+INCLINATION = 33.3 [deg]
+RA_OF_ASC_NODE = 44.4
+ARG_OF_PERICENTER = 55.5
+MEAN_ANOMALY = 66.6 [deg]
+GM = 398600.4415 [km**3/s**2]
+COMMENT What it weighs
+MASS = 0.75 [kg]
+DRAG_AREA = 0.01 [m**2]
+COV_REF_FRAME = RTN
+CX_X = 1
+CY_X = 2
+CY_Y = 3
+CZ_X = 4
+CZ_Y = 5
+CZ_Z = 6
+CX_DOT_X = 7
+CX_DOT_Y = 8
+CX_DOT_Z = 9
+CX_DOT_X_DOT = 10
+CY_DOT_X = 11
+CY_DOT_Y = 12
+CY_DOT_Z = 13
+CY_DOT_X_DOT = 14
+CY_DOT_Y_DOT = 15
+CZ_DOT_X = 16
+CZ_DOT_Y = 17
+CZ_DOT_Z = 18
+CZ_DOT_X_DOT = 19
+CZ_DOT_Y_DOT = 20
+CZ_DOT_Z_DOT = 21 [km**2/s**2]
+COMMENT A kick
+MAN_EPOCH_IGNITION = 2033-03-04T00:00:00
+MAN_DURATION = 0 [s]
+MAN_DELTA_MASS = -0.001 [kg]
+MAN_REF_FRAME = RTN
+MAN_DV_1 = 0.001 [km/s]
+MAN_DV_2 = 0
+MAN_DV_3 = -0.002
+COMMENT Another one
+MAN_EPOCH_IGNITION = 2033-03-05T00:00:00
+MAN_DURATION = 12.5
+MAN_DELTA_MASS = -0.002
+MAN_REF_FRAME = TNW
+MAN_DV_1 = 0.003
+MAN_DV_2 = 0.004
+MAN_DV_3 = 0.005
+USER_DEFINED_CORK = TIGHT
+USER_DEFINED_LETTERS = 3
+`;
+
+export const inventedOmm = `CCSDS_OMM_VERS = 3.0
+CREATION_DATE = 2033-03-03T03:03:03
+ORIGINATOR = NOBODY
+
+OBJECT_NAME = KITE 12
+OBJECT_ID = 2033-997X
+CENTER_NAME = EARTH
+REF_FRAME = TEME
+TIME_SYSTEM = UTC
+MEAN_ELEMENT_THEORY = SGP4
+
+COMMENT On a long string
+EPOCH = 2033-03-03T12:00:00.5
+MEAN_MOTION = 14.25 [rev/day]
+ECCENTRICITY = .0025
+INCLINATION = 77.7 [deg]
+RA_OF_ASC_NODE = 10
+ARG_OF_PERICENTER = 20
+MEAN_ANOMALY = 30
+GM = 398600.8
+MASS = 0.5
+EPHEMERIS_TYPE = 0
+CLASSIFICATION_TYPE = U
+NORAD_CAT_ID = 123456789
+ELEMENT_SET_NO = 0007
+REV_AT_EPOCH = 42
+BSTAR = -.125E-4 [1/ER]
+MEAN_MOTION_DOT = 1e-6 [rev/day**2]
+MEAN_MOTION_DDOT = 0 [rev/day**3]
+USER_DEFINED_TAIL = RED
+`;
+
+export const inventedOmmJson = JSON.stringify([
+  {
+    OBJECT_NAME: "KITE 13",
+    OBJECT_ID: "2033-996W",
+    EPOCH: "2033-03-03T12:00:00.5",
+    MEAN_MOTION: "14.25",
+    ECCENTRICITY: 0.0025,
+    INCLINATION: 77.7,
+    RA_OF_ASC_NODE: 10,
+    ARG_OF_PERICENTER: 20,
+    MEAN_ANOMALY: 30,
+    NORAD_CAT_ID: "77777",
+    BSTAR: -0.0000125,
+    MEAN_MOTION_DOT: 0,
+    MEAN_MOTION_DDOT: 0,
+  },
+]);
+
+/** A line of 68 columns with its checksum. */
+export const summed = (line: string): string => `${line}${lineChecksum(line)}`;
+
+export const inventedLine1 = summed("1 77777U 33999Z   33062.50000000  .00000100  00000+0 -12500-4 0   42");
+export const inventedLine2 = summed("2 77777  77.7000  10.0000 0025000  20.0000  30.0000 14.25000000   42");
+
+/** The first text in which `what` is replaced; a replacement that changes nothing is a fault of the test. */
+export function changed(text: string, what: string, by: string): string {
+  const result = text.replace(what, () => by);
+  if (result === text) throw new Error(`the message does not hold "${what}"`);
+  return result;
+}
