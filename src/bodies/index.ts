@@ -8,4 +8,4 @@ export {
 } from "./ellipsoid.ts";
 export { type FieldSample, oblateness, oblatenessRadius, sampleField } from "./geopotential.ts";
 export { nutation2000B, siderealLessRotation } from "./precessionNutation.ts";
-export { moonTable, sunMoonSource, sunTable } from "./sunMoon.ts";
+export { moonRotation, moonTable, sunMoonSource, sunTable } from "./sunMoon.ts";

@@ -1,6 +1,6 @@
-import { AstroTime, Body, GeoMoon, HelioVector } from "astronomy-engine";
+import { AstroTime, Body, GeoMoon, HelioVector, RotationAxis } from "astronomy-engine";
 import { TabulatedFunction } from "../numeric/index.ts";
-import { DAY } from "../units/index.ts";
+import { DAY, DEGREE } from "../units/index.ts";
 
 /** The au of the library's vectors, m (IAU 2012 Resolution B2, exact). */
 const au = 149_597_870_700;
@@ -26,4 +26,14 @@ export const sunTable = new TabulatedFunction(3, 16 * DAY, 13, (t) => {
 export const moonTable = new TabulatedFunction(3, 4 * DAY, 15, (t) => {
   const moon = GeoMoon(terrestrialTime(t));
   return [moon.x * au, moon.y * au, moon.z * au];
+});
+
+/**
+ * Rotation of the Moon by TT seconds since J2000.0: right ascension and declination of its pole and the angle of its prime
+ * meridian, rad, growing without jumps. Mean Earth / polar axes.
+ * Source: IAU working group on cartographic coordinates and rotational elements (2015), as in the library.
+ */
+export const moonRotation = new TabulatedFunction(3, 4 * DAY, 15, (t) => {
+  const { ra, dec, spin } = RotationAxis(Body.Moon, terrestrialTime(t));
+  return [ra * 15 * DEGREE, dec * DEGREE, spin * DEGREE];
 });

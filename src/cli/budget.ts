@@ -1,7 +1,15 @@
 import type { Command } from "commander";
 import { type BudgetResponse, driftBudgets } from "../wire/index.ts";
 import { remarks, table } from "./report.ts";
-import { deliver, parseInput, readJsonFile, type Surroundings, type WorkOptions, WrongUse } from "./work.ts";
+import {
+  deliver,
+  parseInput,
+  readJsonFile,
+  readTrajectoryFile,
+  type Surroundings,
+  type WorkOptions,
+  WrongUse,
+} from "./work.ts";
 
 interface BudgetOptions extends WorkOptions {
   readonly horizon?: string;
@@ -13,7 +21,10 @@ export function budgetCommand(program: Command, surroundings: Surroundings): voi
   program
     .command("budget")
     .description("tell how far an ideal clock drifts along a trajectory, term by term")
-    .option("--trajectory <file>", "the trajectory, JSON as in the interface document")
+    .option(
+      "--trajectory <file>",
+      "the trajectory: JSON as in the interface document, or an OEM, OPM, OMM or two-line elements as they are",
+    )
     .option("--clock <file>", "a clock; its oscillator.nominalHz turns the frequency preset into Hz")
     .option("--horizon <seconds>", "how far to look, s")
     .option("--from <instant>", "where to begin; the trajectory's own start when left out")
@@ -38,7 +49,7 @@ async function assemble(options: BudgetOptions, surroundings: Surroundings): Pro
     throw new WrongUse("--trajectory FILE and --horizon SECONDS are needed (or --request FILE with everything)");
   }
   return {
-    trajectory: readJsonFile(options.trajectory, "the trajectory"),
+    trajectory: readTrajectoryFile(options.trajectory),
     horizonS: Number(options.horizon),
     ...(options.clock === undefined ? {} : { clock: readJsonFile(options.clock, "the clock") }),
     ...(options.from === undefined ? {} : { from: options.from }),

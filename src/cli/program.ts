@@ -104,7 +104,10 @@ function workCommand(program: Command, name: string, description: string): Comma
     .command(`${name} [file]`)
     .description(`${description}; "-" or nothing: standard input`)
     .option("--clock <file>", "the clock, JSON as in the interface document")
-    .option("--trajectory <file>", "the trajectory, JSON as in the interface document")
+    .option(
+      "--trajectory <file>",
+      "the trajectory: JSON as in the interface document, or an OEM, OPM, OMM or two-line elements as they are",
+    )
     .option("--request <file>", 'a whole request as the service takes it; "-": standard input')
     .option("--scale <scale>", `scale of the answer: ${scales.join(", ")}`)
     .option("--terms <list>", "physical terms to compute, parted by commas; all when left out")

@@ -1,5 +1,6 @@
 import { readFileSync, writeFileSync } from "node:fs";
 import type { Readable, Writable } from "node:stream";
+import { messageKind, splitElementSets } from "../formats/index.ts";
 import { Problem } from "../problem/index.ts";
 import { type Bench, parseJson } from "../wire/index.ts";
 
@@ -27,18 +28,39 @@ export interface WorkOptions {
 /** Wrong use of the command line, said in one sentence. */
 export class WrongUse extends Error {}
 
-/** Errors: WrongUse (cannot be read), Problem invalid-json naming the file. */
-export function readJsonFile(file: string, what: string): unknown {
-  let text: string;
+function readTextFile(file: string, what: string): string {
   try {
-    text = readFileSync(file, "utf8");
+    return readFileSync(file, "utf8");
   } catch (error) {
     throw new WrongUse(`${what} ${file} cannot be read: ${(error as Error).message}`);
   }
+}
+
+/** Errors: WrongUse, naming the file and what is wrong with it. */
+export function readJsonFile(file: string, what: string): unknown {
+  const text = readTextFile(file, what);
   try {
     return parseJson(text.replace(/^\uFEFF/, ""));
   } catch (error) {
     if (error instanceof Problem) throw new WrongUse(`${what} ${file}: ${error.message}`);
+    throw error;
+  }
+}
+
+/** A trajectory from a file as it is: our JSON, or an OEM, OPM, OMM or two-line elements. Errors: WrongUse. */
+export function readTrajectoryFile(file: string): unknown {
+  const text = readTextFile(file, "the trajectory");
+  try {
+    const found = messageKind(text);
+    if (found === null) return readJsonFile(file, "the trajectory");
+    if (found.kind !== "tle") return { kind: found.kind, text };
+    const sets = splitElementSets(text);
+    const [first] = sets;
+    if (first === undefined || sets.length > 1)
+      throw new WrongUse(`the trajectory ${file} holds ${sets.length} element sets; one is needed`);
+    return { kind: "tle", line1: first.line1, line2: first.line2 };
+  } catch (error) {
+    if (error instanceof Problem) throw new WrongUse(`the trajectory ${file}: ${error.message}`);
     throw error;
   }
 }
@@ -92,7 +114,7 @@ export async function assembleRequest(
     throw new WrongUse("--clock FILE and --trajectory FILE are needed (or --request FILE with everything)");
   }
   const clock = readJsonFile(options.clock, "the clock");
-  const trajectory = readJsonFile(options.trajectory, "the trajectory");
+  const trajectory = readTrajectoryFile(options.trajectory);
   const lines = options.value ?? (await readLines(file, surroundings));
   if (lines.length === 0) throw new WrongUse("there is nothing to work on: the input has no lines");
   return {

@@ -133,7 +133,8 @@ interface Counted {
 /** The largest whole number of revolutions from `start` on, or why there are none. */
 function countRevolutions(properTime: ProperTime, start: number, end: number): Counted | string {
   const { trajectory } = properTime;
-  if (trajectory.kind === "surface" || trajectory.kind === "track") return "A clock on the Earth has no orbit.";
+  if (trajectory.kind === "surface" || trajectory.kind === "track")
+    return "A clock on the ground or carried over it has no orbit.";
   const elements = elementsAt(properTime, start);
   if (!(elements.eccentricity < 1)) return "The path is an escape: there are no revolutions.";
   const countedBy =

@@ -1,4 +1,4 @@
-import { type Place, Problem, type ProblemCode } from "../problem/index.ts";
+import { type Place, Problem } from "../problem/index.ts";
 
 /**
  * What all orbit messages share.
@@ -52,7 +52,7 @@ export interface ReadMessage<T> {
 }
 
 /** A message that cannot be read. */
-const unreadable = "invalid-message" as ProblemCode;
+const unreadable = "invalid-message";
 
 /** Shows a found text, cut to a length that fits a sentence. */
 export const quoted = (text: string): string => JSON.stringify(text.length > 60 ? `${text.slice(0, 57)}...` : text);

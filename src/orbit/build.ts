@@ -7,10 +7,12 @@ import type { DescriptionOf, TrajectoryDescription } from "./description.ts";
 import { toGcrf } from "./frames.ts";
 import { impossibleTable, requireRising } from "./impossible.ts";
 import { MeanElementTrajectory } from "./meanElements.ts";
+import { MoonSurfaceTrajectory } from "./moonSurface.ts";
 import { type Phase, PhasedTrajectory } from "./phases.ts";
 import { implausibleState, isFast, requirePossible, weakFieldLimit } from "./plausibility.ts";
 import { PropagatedTrajectory } from "./propagated.ts";
 import { isotropicError, orbitErrorNotGiven, stateError } from "./stateError.ts";
+import { surfaceReference } from "./surface.ts";
 import type { Trajectory } from "./trajectory.ts";
 
 /**
@@ -31,6 +33,11 @@ export function buildTrajectory(
       return buildEphemeris(description, orientation, moment);
     case "surface":
       return buildSurface(description, orientation, moment);
+    case "moon-surface": {
+      const reference = surfaceReference(moment);
+      const { latitude, longitude, height } = description;
+      return new MoonSurfaceTrajectory(reference, latitude, longitude, height, new EarthAxes(reference, orientation));
+    }
     case "track":
       return buildTrack(description, orientation);
     case "mean-elements": {

@@ -12,14 +12,12 @@ import {
 import type { DescriptionOf, SegmentDescription, TableDescription } from "./description.ts";
 import { type Kinematics, toGcrf } from "./frames.ts";
 import { impossibleTable, requireRising } from "./impossible.ts";
+import { moonRadius } from "./moonSurface.ts";
 import { type Phase, PhasedTrajectory } from "./phases.ts";
 import { implausibleTable, isFast, requirePossible, requireSlowerThanLight, weakFieldLimit } from "./plausibility.ts";
 import { orbitErrorNotGiven, stateError } from "./stateError.ts";
 import { deriveVelocities, type TableMethod, TableTrajectory, usualMethod } from "./table.ts";
 import type { OrbitError, Trajectory } from "./trajectory.ts";
-
-/** Radius to which lunar heights are counted, m. */
-const moonRadius = 1_737_400;
 
 /** A table of states. Errors: impossible-table, impossible-state. */
 export function buildTable(description: DescriptionOf<"state-table">, orientation: EarthOrientation): Trajectory {

@@ -58,6 +58,7 @@ export type TrajectoryDescription =
       readonly parts: readonly { readonly from: Instant; readonly trajectory: TrajectoryDescription }[];
     }
   | ({ readonly kind: "surface"; readonly heightOf: HeightOf } & GeodeticPoint)
+  | ({ /** On the Moon; height above its mean sphere. */ readonly kind: "moon-surface" } & GeodeticPoint)
   | {
       readonly kind: "track";
       readonly heightOf: HeightOf;

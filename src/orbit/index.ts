@@ -10,5 +10,6 @@ export type {
 export { type OsculatingElements, osculatingElements } from "./elements.ts";
 export { type Frame, frames, type Kinematics } from "./frames.ts";
 export { innermost } from "./propagated.ts";
+export type { TableMethod } from "./table.ts";
 export type { OrbitError, StateArray, Trajectory } from "./trajectory.ts";
 export { eccentricAnomaly, type KeplerianElements, twoBodyState } from "./twoBody.ts";

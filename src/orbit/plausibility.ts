@@ -2,7 +2,7 @@ import { type EarthAxes, ellipsoidRadiusTowards } from "../bodies/index.ts";
 import { add, cross, dot, norm, scale, subtract, type Vec3 } from "../numeric/index.ts";
 import { type Notice, type Place, Problem } from "../problem/index.ts";
 import type { Instant } from "../time/index.ts";
-import { C, C2, GM_EARTH } from "../units/index.ts";
+import { C, C2, GM_EARTH, GM_MOON } from "../units/index.ts";
 import { type OsculatingElements, osculatingElements } from "./elements.ts";
 import { ForceModel } from "./forces.ts";
 import type { Frame, Kinematics } from "./frames.ts";
@@ -161,7 +161,11 @@ function disagreement(times: Float64Array, states: Float64Array, force: ForceMod
   let i = 0;
   while (i + 1 < times.length) {
     const a = knot(states, i);
-    const turn = Math.sqrt(GM_EARTH / norm(a.position) ** 3);
+    force.moment(times[i]!, moment);
+    const fromMoon = norm(subtract(a.position, [moment.moon[0]!, moment.moon[1]!, moment.moon[2]!]));
+    const aboutEarth = Math.sqrt(GM_EARTH / norm(a.position) ** 3);
+    const aboutMoon = Math.sqrt(GM_MOON / fromMoon ** 3);
+    const turn = Math.max(aboutEarth, aboutMoon);
     let j = i + 1;
     while (j + 1 < times.length && (times[j]! - times[i]!) * turn < shortestStretch) j++;
     const dt = times[j]! - times[i]!;
@@ -169,7 +173,7 @@ function disagreement(times: Float64Array, states: Float64Array, force: ForceMod
     const [from, to] = [times[i]!, times[j]!];
     i = j;
     if (dt * turn > longestStretch) {
-      const step = keplerStep(a, dt);
+      const step = aboutMoon > 0.1 * aboutEarth ? null : keplerStep(a, dt);
       if (step === null || dt * turn > Math.PI) continue;
       off += norm(subtract(b.velocity, step));
       all += norm(subtract(step, a.velocity));

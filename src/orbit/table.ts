@@ -95,8 +95,8 @@ export class TableTrajectory implements Trajectory {
     this.#doubt = errors.doubt;
     this.#widest = errors.widest;
     const worst = this.#widest;
-    // More than a picosecond is worth a word.
-    this.coarse = worst > 1e-12;
+    // Rounded files come to some picoseconds, which the uncertainty carries; more than 50 is worth a word.
+    this.coarse = worst > 5e-11;
     this.notices = this.coarse
       ? [
           ...given.notices,

@@ -27,6 +27,11 @@ export const problemCatalogue = {
     remedy:
       "The detail says which part is wrong and what would be right; a format names its octets, epoch and P-field (CCSDS 301.0-B-4).",
   },
+  "invalid-message": {
+    status: 400,
+    title: "An orbit message cannot be read",
+    remedy: "The detail names the line and the keyword, what was found there and what would be right.",
+  },
   "unknown-path": {
     status: 404,
     title: "There is nothing at this address",
@@ -76,6 +81,11 @@ export const problemCatalogue = {
     status: 422,
     title: "A table of states or points cannot be used",
     remedy: "Give distinct instants in rising order, and enough of them for interpolation.",
+  },
+  "unusable-message": {
+    status: 422,
+    title: "An orbit message is well formed but cannot be used here",
+    remedy: "The detail says what in it is not computed: another body, frame or theory, or manoeuvres.",
   },
   "outside-span": {
     status: 422,

@@ -74,7 +74,8 @@ export function shifted({ seconds, picoseconds }: Instant, by: number): Instant 
  * The instant at which a coordinate time reads `label`: its seconds and picoseconds since 1970-01-01T00:00:32.184 in its
  * own reckoning. Solved until nothing moves, so that an instant that is written and read again is the same picosecond.
  * The scales tick at different rates, so a few labels have no picosecond of TAI to themselves (one in 6e7 of TCB, one in
- * 1.4e9 of TCG): they give the instant beside it. No errors.
+ * 1.4e9 of TCG, fewer of TDB): they give the instant beside it. Where TDB is the slower, as few picoseconds share a label.
+ * No errors.
  */
 export function instantOfCoordinateTime(scale: CoordinateTime, label: Instant): Instant {
   let instant = shifted(label, -roughly(scale, label));

@@ -15,7 +15,7 @@ import { at, Problem } from "../problem/index.ts";
 import { addSeconds, formatInstant, type Instant } from "../time/index.ts";
 import { DAY, DEGREE, KM, NS } from "../units/index.ts";
 import { type BudgetRequest, type BudgetResponse, budgetRequestSchema } from "./budgetSchemas.ts";
-import { type Bench, basisOf, pathDigest } from "./corrections.ts";
+import { type Bench, basisOf, pathDigest, placedInTrajectory } from "./corrections.ts";
 import { readClock, readOrientation, readTrajectory, startOf } from "./fromRequest.ts";
 import { readInstant } from "./instants.ts";
 import { writeNotice } from "./problemDetails.ts";
@@ -35,7 +35,9 @@ export function driftBudgets(body: unknown, bench: Bench): BudgetResponse {
     ]);
   }
   if (request.clock !== undefined) at(["clock"], () => readClock(request.clock!, leapSeconds));
-  const trajectory = at(["trajectory"], () => readTrajectory(request.trajectory, leapSeconds));
+  const { description: trajectory, notices: remarks } = at(["trajectory"], () =>
+    readTrajectory(request.trajectory, leapSeconds),
+  );
   const from = readFrom(request, startOf(trajectory), bench);
   const orientation = readOrientation(request.earthOrientation);
   const path = { trajectory, orientation, terms: request.terms ?? null, anchor: from };
@@ -63,7 +65,7 @@ export function driftBudgets(body: unknown, bench: Bench): BudgetResponse {
     ...writeBudget(budget, bench, request.clock?.oscillator?.nominalHz),
     ...(basis === null ? {} : { basis }),
     evidence: makeEvidence(request, footing, bench.version),
-    notices: settingNotices(footing, false).map(writeNotice),
+    notices: [...placedInTrajectory(remarks), ...settingNotices(footing, false)].map(writeNotice),
   };
 }
 

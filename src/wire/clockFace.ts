@@ -10,9 +10,13 @@ import {
   type Instant,
   type LeapSecondTable,
   parseInstant,
+  readTimeCode,
+  writeTimeCode,
 } from "../time/index.ts";
 import type { ClockIn } from "./clockSchemas.ts";
 import { readInstant } from "./instants.ts";
+import { readTimeCodeFormat } from "./timeCodeFormat.ts";
+import type { ClockCodeIn } from "./timeCodeSchemas.ts";
 
 /** A reading as it stands in a request. */
 export type ReadingIn = number | string;
@@ -26,19 +30,24 @@ export interface FaceWriter {
 }
 
 /**
- * The face of a clock as described. Errors, with places inside the clock: invalid-request (none or both of counter and
- * timeStamp), impossible-clock (a rate or a form that cannot be).
+ * The face of a clock as described. Errors, with places inside the clock: invalid-request (none or several of
+ * counter, timeStamp and timeCode), impossible-clock (a rate or a form that cannot be).
  */
 export function readFace(clock: ClockIn, leapSeconds: LeapSecondTable): FaceWriter {
-  const { counter, timeStamp } = clock;
-  const given = [counter && "counter", timeStamp && "timeStamp"].filter((name) => name !== undefined);
+  const { counter, timeStamp, timeCode } = clock;
+  const given = [counter && "counter", timeStamp && "timeStamp", timeCode && "timeCode"].filter(
+    (name) => name !== undefined,
+  );
   if (given.length !== 1) {
-    const found = given.length === 0 ? "neither" : given.join(" and ");
-    throw new Problem("invalid-request", `A clock has exactly one of counter and timeStamp; this one has ${found}.`, [
-      { place: given.length === 0 ? [] : [given[1]!], expected: "exactly one of counter and timeStamp" },
-    ]);
+    const found = given.length === 0 ? "none" : given.join(" and ");
+    throw new Problem(
+      "invalid-request",
+      `A clock has exactly one of counter, timeStamp and timeCode; this one has ${found}.`,
+      [{ place: given.length === 0 ? [] : [given[1]!], expected: "exactly one of counter, timeStamp and timeCode" }],
+    );
   }
   if (counter !== undefined) return at(["counter"], () => counterFace(counter));
+  if (timeCode !== undefined) return at(["timeCode"], () => codeFace(timeCode, leapSeconds));
   return at(["timeStamp"], () => stampFace(timeStamp!, leapSeconds));
 }
 
@@ -94,6 +103,19 @@ function readRate(value: number | string): Rational {
     throw fault(`A counter of ${text} ticks a second is out of reach.`, "from 1e-6 to 1e12 ticks a second");
   }
   return rate;
+}
+
+/** A clock that shows a time code of CCSDS 301.0-B-4. A reading marks the moment at which the clock took it on. */
+function codeFace(given: ClockCodeIn, leapSeconds: LeapSecondTable): FaceWriter {
+  const format = readTimeCodeFormat(given, leapSeconds);
+  return {
+    read(value) {
+      if (typeof value !== "string") throw unreadable(value, "the hexadecimal text of a time code");
+      return readTimeCode(value, format, leapSeconds);
+    },
+    write: (indicated) => writeTimeCode(momentOf(indicated), format, leapSeconds).timeCode,
+    face: () => ({ kind: "stamp", resolution: null }),
+  };
 }
 
 type StampIn = NonNullable<ClockIn["timeStamp"]>;

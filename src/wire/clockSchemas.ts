@@ -1,4 +1,5 @@
 import { instantSchema, number, readingSchema, sigma } from "./sharedSchemas.ts";
+import { clockCodeSchema } from "./timeCodeSchemas.ts";
 import { z } from "./zod.ts";
 
 const counterSchema = z
@@ -84,6 +85,7 @@ export const clockSchema = z
   .strictObject({
     counter: counterSchema.optional(),
     timeStamp: timeStampSchema.optional(),
+    timeCode: clockCodeSchema.optional(),
     anchor: z
       .strictObject({
         reading: readingSchema,
@@ -95,6 +97,6 @@ export const clockSchema = z
       .openapi("Anchor", { description: "The reading and the instant at which the clock model starts." }),
     oscillator: oscillatorSchema.optional(),
   })
-  .openapi("Clock", { description: "Exactly one of counter and timeStamp says what its readings are." });
+  .openapi("Clock", { description: "Exactly one of counter, timeStamp and timeCode says what its readings are." });
 
 export type ClockIn = z.infer<typeof clockSchema>;

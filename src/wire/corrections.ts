@@ -45,8 +45,15 @@ export const plainBench = (leapSeconds: LeapSecondTable, version: string): Bench
 
 type Shared = Pick<CorrectionRequest, "clock" | "trajectory" | "terms" | "earthOrientation">;
 
-function prepare(request: Shared, bench: Bench): { setting: Setting; writer: FaceWriter } {
-  const { clock, writer, path } = readClockAndPath(request, bench.leapSeconds);
+interface Prepared {
+  readonly setting: Setting;
+  readonly writer: FaceWriter;
+  /** On how the trajectory was read. */
+  readonly remarks: readonly Notice[];
+}
+
+function prepare(request: Shared, bench: Bench): Prepared {
+  const { clock, writer, notices, path } = readClockAndPath(request, bench.leapSeconds);
   const properTime = bench.properTime(pathDigest({ ...request, from: request.clock.anchor.at }), () =>
     build(path, bench.leapSeconds),
   );
@@ -56,13 +63,17 @@ function prepare(request: Shared, bench: Bench): { setting: Setting; writer: Fac
     { orientation: path.orientation, basis: basisOf(request) },
     bench.leapSeconds,
   );
-  return { setting, writer };
+  return { setting, writer, remarks: placedInTrajectory(notices) };
 }
 
 const build = (path: PathRequest, leapSeconds: LeapSecondTable): ProperTime => buildProperTime(path, leapSeconds);
 
 export const basisOf = ({ trajectory }: Pick<Shared, "trajectory">) =>
   "basis" in trajectory ? (trajectory.basis ?? null) : null;
+
+/** Remarks on a trajectory, seen from the whole request. */
+export const placedInTrajectory = (notices: readonly Notice[]): Notice[] =>
+  notices.map((notice) => ({ ...notice, place: ["trajectory", ...(notice.place ?? [])] }));
 
 /** What an integral along a trajectory is made of, as a digest; `from`: where it is counted from. */
 export function pathDigest({
@@ -82,7 +93,7 @@ export function pathDigest({
 /** POST /v1/corrections and `tauline correct`: a parsed JSON value in, the answer out. All or nothing. */
 export function corrections(body: unknown, bench: Bench): CorrectionResponse {
   const request: CorrectionRequest = validate(correctionRequestSchema, body);
-  const { setting, writer } = prepare(request, bench);
+  const { setting, writer, remarks } = prepare(request, bench);
   const readings = readReadings(request.readings, writer, bench.leapSeconds);
   const scale = request.scale ?? "UTC";
   const corrected = forEachItem(["readings"], readings, (reading) =>
@@ -98,14 +109,14 @@ export function corrections(body: unknown, bench: Bench): CorrectionResponse {
       ...writeState(result),
     };
   });
-  return { results, ...close(request, setting, corrected, bench) };
+  return { results, ...close(request, setting, corrected, remarks, bench) };
 }
 
 /** POST /v1/predicted-readings and `tauline predict`. All or nothing. */
 export function predictedReadings(body: unknown, bench: Bench): PredictionResponse {
   const request: PredictionRequest = validate(predictionRequestSchema, body);
   const instants = readInstants(request.instants, bench.leapSeconds);
-  const { setting, writer } = prepare(request, bench);
+  const { setting, writer, remarks } = prepare(request, bench);
   const scale = request.scale ?? "UTC";
   const predicted = forEachItem(["instants"], instants, (instant) => predictReading(setting, instant));
   const results = predicted.map((result) => ({
@@ -116,7 +127,7 @@ export function predictedReadings(body: unknown, bench: Bench): PredictionRespon
     sigmaTicks: result.sigmaTicks,
     ...writeState(result),
   }));
-  return { results, ...close(request, setting, predicted, bench) };
+  return { results, ...close(request, setting, predicted, remarks, bench) };
 }
 
 /** A standard uncertainty in ns; twelve digits are more than any is known to. */
@@ -144,34 +155,49 @@ function writeState(state: ClockState) {
   };
 }
 
-/** GPS time is related to TAI by its integer rule; who mixes it with UTC should know. */
+/** Scales that are related to TAI by an integer rule of their own. */
+const ruled: readonly string[] = ["GPS", "GST", "BDT", "GLONASS"];
+
+/** Navigation time scales are related to TAI by their integer rules; who mixes them with UTC should know. */
 function scaleNotices({
   scale,
   clock,
   instants,
 }: Shared & Pick<PredictionRequest, "scale"> & { instants?: PredictionRequest["instants"] }): Notice[] {
-  const isGps = (value: InstantIn): boolean => typeof value !== "string" && value.scale === "GPS";
-  if (scale !== "GPS" && !isGps(clock.anchor.at) && !instants?.some(isGps)) return [];
-  return [
-    {
-      code: "realised-scale",
-      text: "GPS time is taken as TAI - 19 s; the realised scale differs from that by nanoseconds, which are not in the uncertainty.",
-    },
+  const given = [clock.anchor.at, ...(instants ?? [])].flatMap((value) =>
+    typeof value === "string" ? [] : [value.scale],
+  );
+  const met = [
+    ...new Set([
+      ...(scale === undefined ? [] : [scale]),
+      ...(clock.timeStamp ? [clock.timeStamp.scale] : []),
+      ...given,
+    ]),
   ];
+  return met
+    .filter((name) => ruled.includes(name))
+    .map((name) => ({
+      code: "realised-scale",
+      text: `${name} time is taken by its integer rule; the realised scale differs from that by nanoseconds, which are not in the uncertainty.`,
+    }));
 }
 
 function close(
   request: CorrectionRequest | PredictionRequest,
   setting: Setting,
   states: readonly ClockState[],
+  remarks: readonly Notice[],
   bench: Bench,
 ) {
   const expired = states.some(({ flags }) => flags.includes("leap-table-expired"));
   return {
     ...(setting.basis === null ? {} : { basis: setting.basis }),
     evidence: makeEvidence(request, setting, bench.version),
-    notices: [...clockNotices(setting.clock), ...settingNotices(setting, expired), ...scaleNotices(request)].map(
-      writeNotice,
-    ),
+    notices: [
+      ...remarks,
+      ...clockNotices(setting.clock),
+      ...settingNotices(setting, expired),
+      ...scaleNotices(request),
+    ].map(writeNotice),
   };
 }

@@ -1,7 +1,7 @@
 import type { Oscillator } from "../clock/index.ts";
 import type { Clock, GivenOrientation, PathRequest, Reading } from "../correction/index.ts";
 import type { Center, Frame, StateError, TrajectoryDescription } from "../orbit/index.ts";
-import { at, forEachItem, Problem } from "../problem/index.ts";
+import { at, forEachItem, type Notice, Problem } from "../problem/index.ts";
 import {
   addDurations,
   type Duration,
@@ -15,6 +15,8 @@ import { type FaceWriter, readAnchor, readFace } from "./clockFace.ts";
 import type { ClockIn } from "./clockSchemas.ts";
 import type { CorrectionRequest, PredictionRequest } from "./correctionSchemas.ts";
 import { type InstantIn, readInstant } from "./instants.ts";
+import { type ReadTrajectory, readOem, readOmm, readOpm, readTle } from "./messages.ts";
+import type { TrajectoryIn } from "./trajectorySchemas.ts";
 
 /** Text and km to domain values and SI. Every error carries the place in the request. */
 
@@ -130,10 +132,37 @@ function isPositive(matrix: readonly (readonly number[])[]): boolean {
   return true;
 }
 
-export function readTrajectory(
-  given: CorrectionRequest["trajectory"],
-  leapSeconds: LeapSecondTable,
-): TrajectoryDescription {
+/** A trajectory as described, and remarks on how it was read. Places inside the trajectory. */
+export function readTrajectory(given: TrajectoryIn, leapSeconds: LeapSecondTable): ReadTrajectory {
+  switch (given.kind) {
+    case "oem":
+      return readOem(given.text, leapSeconds);
+    case "opm":
+      return readOpm(given.text, leapSeconds);
+    case "omm":
+      return readOmm(given, leapSeconds);
+    case "tle":
+      return readTle(given.line1, given.line2, leapSeconds);
+    case "phases": {
+      const parts = forEachItem(["parts"], given.parts, ({ from, trajectory }, i) => {
+        const { description, notices } = at(["trajectory"], () => readTrajectory(trajectory, leapSeconds));
+        const instant = at(["from"], () => readInstant(from, leapSeconds));
+        const placed = notices.map((notice) => ({
+          ...notice,
+          place: ["parts", i, "trajectory", ...(notice.place ?? [])],
+        }));
+        return { from: instant, trajectory: description, notices: placed };
+      });
+      return { description: { kind: "phases", parts }, notices: parts.flatMap(({ notices }) => notices) };
+    }
+    default:
+      return { description: readPlainTrajectory(given, leapSeconds), notices: [] };
+  }
+}
+
+type PlainIn = Extract<TrajectoryIn, { kind: "state-vector" | "state-table" | "surface" | "track" }>;
+
+function readPlainTrajectory(given: PlainIn, leapSeconds: LeapSecondTable): TrajectoryDescription {
   const instant = (value: InstantIn, ...place: (string | number)[]): Instant =>
     at(place, () => readInstant(value, leapSeconds));
   switch (given.kind) {
@@ -165,7 +194,7 @@ export function readTrajectory(
         })),
       };
     case "surface":
-      return { kind: given.kind, heightOf: given.heightOf, ...readPoint(given) };
+      return readSurface(given);
     case "track":
       return {
         kind: given.kind,
@@ -200,6 +229,7 @@ export function startOf(trajectory: TrajectoryDescription): Instant | null {
     case "track":
       return trajectory.points[0]!.at;
     case "surface":
+    case "moon-surface":
       return null;
     case "mean-elements":
       return trajectory.elements.epoch;
@@ -208,13 +238,25 @@ export function startOf(trajectory: TrajectoryDescription): Instant | null {
   }
 }
 
+/** Errors: invalid-request where heightOf is missing (Earth) or out of place (Moon). */
+function readSurface(given: Extract<TrajectoryIn, { kind: "surface" }>): TrajectoryDescription {
+  const { body, heightOf } = given;
+  if (body === "Moon" && heightOf === undefined) return { kind: "moon-surface", ...readPoint(given) };
+  if (body === "Earth" && heightOf !== undefined) return { kind: "surface", heightOf, ...readPoint(given) };
+  const expected =
+    body === "Earth" ? '"ellipsoid" or "geoid" (it is missing)' : "no heightOf: lunar heights are above 1737.4 km";
+  throw new Problem("invalid-request", `A height on the ${body} is given with ${expected}.`, [
+    { place: ["heightOf"], received: heightOf, expected },
+  ]);
+}
+
 const readPoint = (point: { latitudeDeg: number; longitudeDeg: number; heightM: number }) => ({
   latitude: point.latitudeDeg * DEGREE,
   longitude: point.longitudeDeg * DEGREE,
   height: point.heightM,
 });
 
-function readStateError(given: Extract<CorrectionRequest["trajectory"], { kind: "state-vector" }>): StateError {
+function readStateError(given: Extract<TrajectoryIn, { kind: "state-vector" }>): StateError {
   const { covarianceRtn } = given;
   if (covarianceRtn !== undefined) {
     if (given.positionSigmaKm !== undefined || given.velocitySigmaKmPerS !== undefined) {
@@ -256,9 +298,14 @@ export const readInstants = (given: PredictionRequest["instants"], leapSeconds: 
 export function readClockAndPath(
   request: Pick<CorrectionRequest, "clock" | "trajectory" | "terms" | "earthOrientation">,
   leapSeconds: LeapSecondTable,
-): { clock: Clock; writer: FaceWriter; path: PathRequest } {
+): { clock: Clock; writer: FaceWriter; notices: readonly Notice[]; path: PathRequest } {
   const { clock, writer } = at(["clock"], () => readClock(request.clock, leapSeconds));
-  const trajectory = at(["trajectory"], () => readTrajectory(request.trajectory, leapSeconds));
+  const { description, notices } = at(["trajectory"], () => readTrajectory(request.trajectory, leapSeconds));
   const orientation = readOrientation(request.earthOrientation);
-  return { clock, writer, path: { trajectory, orientation, terms: request.terms ?? null, anchor: clock.anchor.at } };
+  return {
+    clock,
+    writer,
+    notices,
+    path: { trajectory: description, orientation, terms: request.terms ?? null, anchor: clock.anchor.at },
+  };
 }

@@ -55,6 +55,11 @@ const ascii = (format: "ASCII-A" | "ASCII-B") =>
       .openapi({ description: "Whether Z ends it. Left out: written with Z, read with and without." }),
   });
 
+/** The binary codes, which a clock can show. */
+export const clockCodeSchema = z
+  .discriminatedUnion("format", [cucFormatSchema, cdsFormatSchema, ccsFormatSchema])
+  .openapi("ClockCode", { description: "A clock that shows a binary time code; a reading is its hexadecimal text." });
+
 export const timeCodeFormatSchema = z
   .discriminatedUnion("format", [
     cucFormatSchema,
@@ -68,3 +73,4 @@ export const timeCodeFormatSchema = z
   });
 
 export type TimeCodeFormatIn = z.infer<typeof timeCodeFormatSchema>;
+export type ClockCodeIn = z.infer<typeof clockCodeSchema>;

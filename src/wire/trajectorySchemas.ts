@@ -58,8 +58,15 @@ const heightOf = z
   .openapi({ description: "What heights are above: WGS 84 or the geoid." });
 
 const surfaceSchema = z
-  .strictObject({ kind: z.literal("surface"), body: z.literal("Earth"), ...place, heightOf })
-  .openapi("Surface", { description: "A clock at rest on the Earth." });
+  .strictObject({
+    kind: z.literal("surface"),
+    body: z.enum(["Earth", "Moon"]),
+    ...place,
+    heightOf: heightOf.optional().openapi({
+      description: "What the height is above: required for the Earth; left out for the Moon (above 1737.4 km).",
+    }),
+  })
+  .openapi("Surface", { description: "A clock at rest on the Earth or on the Moon (mean Earth / polar axes)." });
 
 const trackSchema = z
   .strictObject({
@@ -75,9 +82,56 @@ const trackSchema = z
     description: "A clock carried over the Earth: great-circle legs between points, height even in time.",
   });
 
-export const trajectorySchema = z
-  .discriminatedUnion("kind", [stateVectorSchema, stateTableSchema, surfaceSchema, trackSchema])
-  .openapi("Trajectory");
+const basis = basisSchema.optional();
+const messageText = z.string().max(16 * 1024 * 1024);
+
+const oemSchema = z.strictObject({ kind: z.literal("oem"), text: messageText, basis }).openapi("Oem", {
+  description:
+    "An orbit ephemeris message, CCSDS 502.0-B, KVN or XML; its interpolation and useable span are honoured.",
+});
+
+const opmSchema = z.strictObject({ kind: z.literal("opm"), text: messageText, basis }).openapi("Opm", {
+  description:
+    "An orbit parameter message, KVN or XML, propagated like a state vector; one with manoeuvres is refused.",
+});
+
+const ommSchema = z
+  .strictObject({
+    kind: z.literal("omm"),
+    omm: z.record(z.string(), z.unknown()).optional().openapi({ description: "The message as JSON." }),
+    text: messageText.optional().openapi({ description: "The message as KVN, XML or JSON text, instead of omm." }),
+    basis,
+  })
+  .openapi("Omm", { description: "An orbit mean-elements message for SGP4; exactly one of omm and text." });
+
+const tleSchema = z
+  .strictObject({ kind: z.literal("tle"), line1: z.string().max(200), line2: z.string().max(200), basis })
+  .openapi("Tle", { description: "Two-line elements, checksums checked." });
+
+const single = [
+  stateVectorSchema,
+  stateTableSchema,
+  oemSchema,
+  opmSchema,
+  ommSchema,
+  tleSchema,
+  surfaceSchema,
+  trackSchema,
+] as const;
+
+const phasesSchema = z
+  .strictObject({
+    kind: z.literal("phases"),
+    parts: z
+      .array(z.strictObject({ from: instantSchema, trajectory: z.discriminatedUnion("kind", [...single]) }))
+      .min(1)
+      .max(1000),
+  })
+  .openapi("Phases", { description: "Trajectories one after the other, each from its start to the next one's." });
+
+export const trajectorySchema = z.discriminatedUnion("kind", [...single, phasesSchema]).openapi("Trajectory");
+
+export type TrajectoryIn = z.infer<typeof trajectorySchema>;
 
 export const earthOrientationSchema = z
   .strictObject({

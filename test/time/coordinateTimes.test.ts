@@ -91,6 +91,27 @@ describe("every scale", () => {
   });
 });
 
+it.each([
+  ["TCB", 100_000_000n],
+  ["TCG", 3_000_000_000n],
+] as const)("a label of %s that no picosecond of TAI has to itself gives one beside it", (scale, stretch) => {
+  const at = (total: bigint): Instant => ({ seconds: Number(total / second), picoseconds: Number(total % second) });
+  const ahead = (total: bigint): bigint => labelOf(formatInstant(at(total), scale, table)) - total;
+  // The scale gains at least a picosecond on this stretch: halve it down to the two neighbours with a label between them.
+  let low = exact(parseInstant("2026-03-01T00:00:00Z", "UTC", table));
+  let high = low + stretch;
+  const start = ahead(low);
+  expect(ahead(high)).toBeGreaterThan(start);
+  while (high - low > 1n) {
+    const middle = (low + high) / 2n;
+    if (ahead(middle) > start) high = middle;
+    else low = middle;
+  }
+  const [before, after] = [low, high].map((total) => labelOf(formatInstant(at(total), scale, table)));
+  expect(after! - before!).toBe(2n);
+  expect([at(low), at(high)]).toContainEqual(parseInstant(textOf(before! + 1n), scale, table));
+});
+
 describe("rates and origins, against exact decimals", () => {
   const Exact = Decimal.clone({ precision: 60 });
   const origin = 220_924_800n * second; // 1977-01-01T00:00:00 TAI
