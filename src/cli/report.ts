@@ -41,6 +41,7 @@ export function remarks({ notices, evidence }: Remarks): string[] {
   lines.push(
     `  evidence: inputs ${evidence.inputsSha256.slice(0, 16)}..., ${evidence.leapSeconds.source.split(",")[0]}, version ${evidence.version}`,
   );
+  lines.push("  caution: decision support, not qualified for flight safety; tauline --help says more");
   return lines;
 }
 

@@ -115,6 +115,8 @@ export async function assembleRequest(
   }
   const clock = readJsonFile(options.clock, "the clock");
   const trajectory = readTrajectoryFile(options.trajectory);
+  if (options.value !== undefined && file !== undefined)
+    throw new WrongUse("--value and a file were given; use one of them");
   const lines = options.value ?? (await readLines(file, surroundings));
   if (lines.length === 0) throw new WrongUse("there is nothing to work on: the input has no lines");
   return {
@@ -130,7 +132,9 @@ export async function assembleRequest(
 /** Readings, one a line: the value, and after a comma a rough time if there is one. */
 export const readingItems = (lines: readonly string[], near: string | undefined): object => ({
   readings: lines.map((line) => {
-    const [reading = "", own] = line.split(",").map((part) => part.trim());
+    const [reading = "", own, ...more] = line.split(",").map((part) => part.trim());
+    if (more.length > 0)
+      throw new WrongUse(`a line is VALUE or VALUE,ROUGH-TIME; this one has more: ${line.slice(0, 80)}`);
     const rough = own === undefined || own === "" ? near : own;
     return { reading, ...(rough === undefined ? {} : { near: rough }) };
   }),
