@@ -7,6 +7,7 @@ import type { Config } from "./config.ts";
 import { createHttpApp } from "./http/index.ts";
 import { Problem } from "./problem/index.ts";
 import type { ProperTime } from "./relativity/index.ts";
+import { documentPage, problemPage, problemsPage } from "./web/index.ts";
 import { type Bench, problemDetails } from "./wire/index.ts";
 
 /** So many bytes of integrals and paths are kept for trajectories that were asked for lately. */
@@ -44,7 +45,12 @@ export interface App {
 export function createApp(config: Config): App {
   const logger = pino({ level: config.logLevel, base: null }, destination({ fd: 2, sync: true }));
   let stopping = false;
-  const express = createHttpApp({ bench: keepingBench(config), logger, isStopping: () => stopping });
+  const express = createHttpApp({
+    bench: keepingBench(config),
+    logger,
+    isStopping: () => stopping,
+    pages: { documentPage, problemPage, problemsPage },
+  });
   return {
     express,
     logger,

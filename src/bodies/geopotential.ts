@@ -42,8 +42,53 @@ export interface FieldSample {
   z: number;
 }
 
-const v = new Float64Array(size * size);
-const w = new Float64Array(size * size);
+/** V and W of eqs. 3.29 and 3.30 stand in a triangle, degree by degree. */
+const count = (size * (size + 1)) / 2;
+const placeOf = (n: number, m: number): number => (n * (n + 1)) / 2 + m;
+
+/** Factors of eq. 3.30 by place (n above m): of z V(n - 1, m) and of rho V(n - 2, m). */
+const upper = new Float64Array(count);
+const lower = new Float64Array(count);
+for (let n = 1; n < size; n++) {
+  for (let m = 0; m < n; m++) {
+    upper[placeOf(n, m)] = (2 * n - 1) / (n - m);
+    lower[placeOf(n, m)] = n > m + 1 ? (n + m - 1) / (n - m) : 0;
+  }
+}
+
+/** Potential (eq. 3.28) and gradient (eq. 3.33) are sums over all V and W; their weights, eight a place. */
+const weights = new Float64Array(8 * count);
+for (let n = 2; n <= geopotentialDegree; n++) {
+  for (let m = 0; m <= n; m++) {
+    const c = cosine[n * size + m]!;
+    const s = sine[n * size + m]!;
+    weights[8 * placeOf(n, m)] = c;
+    weights[8 * placeOf(n, m) + 1] = s;
+    const add = (to: number, component: number, ofV: number, ofW: number): void => {
+      weights[8 * to + component]! += ofV;
+      weights[8 * to + component + 1]! += ofW;
+    };
+    const ahead = placeOf(n + 1, m + 1);
+    if (m === 0) {
+      add(ahead, 2, -c, 0);
+      add(ahead, 4, 0, -c);
+    } else {
+      const f = (n - m + 2) * (n - m + 1);
+      const behind = placeOf(n + 1, m - 1);
+      add(ahead, 2, -c / 2, -s / 2);
+      add(ahead, 4, s / 2, -c / 2);
+      add(behind, 2, (f * c) / 2, (f * s) / 2);
+      add(behind, 4, (f * s) / 2, (-f * c) / 2);
+    }
+    add(placeOf(n + 1, m), 6, -(n - m + 1) * c, -(n - m + 1) * s);
+  }
+}
+
+const v = new Float64Array(count);
+const w = new Float64Array(count);
+const perRadius = GM_EARTH / reference;
+const perSquare = perRadius / reference;
+const zonal = placeOf(2, 0);
 
 /**
  * Potential and gradient of the Earth's field without its monopole, at an Earth-fixed position in metres.
@@ -57,48 +102,50 @@ export function sampleField(x: number, y: number, z: number, out: FieldSample): 
   const y0 = y * k;
   const z0 = z * k;
   const rho = reference * k;
-  v[0] = reference / Math.sqrt(r2);
-  w[0] = 0;
+  // V and W of the diagonal, carried from one order to the next.
+  let vm = reference / Math.sqrt(r2);
+  let wm = 0;
+  let diagonal = 0;
   for (let m = 0; m < size; m++) {
-    const diagonal = m * size + m;
-    if (m > 0) {
-      const before = diagonal - size - 1;
-      v[diagonal] = (2 * m - 1) * (x0 * v[before]! - y0 * w[before]!); // eq. 3.29
-      w[diagonal] = (2 * m - 1) * (x0 * w[before]! + y0 * v[before]!);
-    }
+    v[diagonal] = vm;
+    w[diagonal] = wm;
+    let v1 = vm;
+    let w1 = wm;
+    let v2 = 0;
+    let w2 = 0;
+    let i = diagonal;
     for (let n = m + 1; n < size; n++) {
-      const i = n * size + m;
-      const a = ((2 * n - 1) * z0) / (n - m); // eq. 3.30
-      const b = n > m + 1 ? ((n + m - 1) * rho) / (n - m) : 0;
-      v[i] = a * v[i - size]! - (b === 0 ? 0 : b * v[i - 2 * size]!);
-      w[i] = a * w[i - size]! - (b === 0 ? 0 : b * w[i - 2 * size]!);
+      i += n;
+      const a = upper[i]! * z0;
+      const b = lower[i]! * rho;
+      const vn = a * v1 - b * v2;
+      const wn = a * w1 - b * w2;
+      v2 = v1;
+      w2 = w1;
+      v1 = vn;
+      w1 = wn;
+      v[i] = vn;
+      w[i] = wn;
     }
+    const odd = 2 * m + 1;
+    const next = odd * (x0 * vm - y0 * wm); // eq. 3.29
+    wm = odd * (x0 * wm + y0 * vm);
+    vm = next;
+    diagonal += m + 2;
   }
   let potential = 0;
   let gx = 0;
   let gy = 0;
   let gz = 0;
-  for (let n = 2; n <= geopotentialDegree; n++) {
-    for (let m = 0; m <= n; m++) {
-      const i = n * size + m;
-      const c = cosine[i]!;
-      const s = sine[i]!;
-      potential += c * v[i]! + s * w[i]!; // eq. 3.28
-      const up = i + size;
-      gz -= (n - m + 1) * (c * v[up]! + s * w[up]!); // eq. 3.33
-      if (m === 0) {
-        gx -= c * v[up + 1]!;
-        gy -= c * w[up + 1]!;
-      } else {
-        const f = (n - m + 2) * (n - m + 1);
-        gx += 0.5 * (-c * v[up + 1]! - s * w[up + 1]! + f * (c * v[up - 1]! + s * w[up - 1]!));
-        gy += 0.5 * (-c * w[up + 1]! + s * v[up + 1]! + f * (-c * w[up - 1]! + s * v[up - 1]!));
-      }
-    }
+  for (let i = zonal, at = 8 * zonal; i < count; i++, at += 8) {
+    const vi = v[i]!;
+    const wi = w[i]!;
+    potential += weights[at]! * vi + weights[at + 1]! * wi;
+    gx += weights[at + 2]! * vi + weights[at + 3]! * wi;
+    gy += weights[at + 4]! * vi + weights[at + 5]! * wi;
+    gz += weights[at + 6]! * vi + weights[at + 7]! * wi;
   }
-  const perRadius = GM_EARTH / reference;
-  const perSquare = perRadius / reference;
-  out.oblateness = perRadius * cosine[2 * size]! * v[2 * size]!;
+  out.oblateness = perRadius * cosine[2 * size]! * v[zonal]!;
   out.higher = perRadius * potential - out.oblateness;
   out.x = perSquare * gx;
   out.y = perSquare * gy;

@@ -8,6 +8,7 @@ import { daysUntil, formatInstant } from "../time/index.ts";
 import { type Bench, parseJson, problemDetails } from "../wire/index.ts";
 import { calls } from "./calls.ts";
 import { interfaceDocument } from "./interfaceDocument.ts";
+import { addPages, type PageMakers, pageAddresses } from "./pages.ts";
 
 /** Largest body, bytes, after decompression. */
 const mostBytes = 16 * 1024 * 1024;
@@ -17,10 +18,12 @@ export interface HttpParts {
   readonly logger: Logger;
   /** True once the service is going down: no new work is begun. */
   readonly isStopping: () => boolean;
+  /** Makes the pages for people; without it there are none. */
+  readonly pages?: PageMakers;
 }
 
 /** The HTTP application. It holds no state of its own. */
-export function createHttpApp({ bench, logger, isStopping }: HttpParts): Express {
+export function createHttpApp({ bench, logger, isStopping, pages }: HttpParts): Express {
   const app = express();
   app.disable("x-powered-by");
   app.set("etag", false);
@@ -67,10 +70,14 @@ export function createHttpApp({ bench, logger, isStopping }: HttpParts): Express
     });
   });
   let document: object | undefined;
-  app.get("/openapi.json", (_request, response) => {
+  const theDocument = (): object => {
     document ??= interfaceDocument(bench.version);
-    response.json(document);
+    return document;
+  };
+  app.get("/openapi.json", (_request, response) => {
+    response.json(theDocument());
   });
+  if (pages !== undefined) addPages(app, pages, theDocument);
 
   const readBytes = express.raw({ type: () => true, limit: mostBytes });
   for (const call of calls) {
@@ -94,6 +101,7 @@ export function createHttpApp({ bench, logger, isStopping }: HttpParts): Express
     "/healthz": "GET, HEAD",
     "/readyz": "GET, HEAD",
     "/openapi.json": "GET, HEAD",
+    ...(pages === undefined ? {} : Object.fromEntries(pageAddresses.map((path) => [path, "GET, HEAD"]))),
   };
   app.use((request, response) => {
     const allowed = methods[request.path];

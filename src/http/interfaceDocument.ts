@@ -1,9 +1,13 @@
 import { OpenAPIRegistry, OpenApiGeneratorV31 } from "@asteasolutions/zod-to-openapi";
 import { noticeCatalogue, type ProblemCode, problemCatalogue } from "../problem/index.ts";
-import { caution, problemSchema, z } from "../wire/index.ts";
+import { caution, problemSchema, sharedShapes, z } from "../wire/index.ts";
 import { calls } from "./calls.ts";
+import { requestExamples } from "./examples.ts";
 
-const json = (schema: z.ZodType) => ({ "application/json": { schema } });
+const json = (schema: z.ZodType, example?: object) => ({
+  "application/json": { schema, ...(example === undefined ? {} : { example }) },
+});
+const page = { "text/html": { schema: z.string() } };
 
 /** The catalogue as text: one line a code. */
 function catalogueText(): string {
@@ -35,6 +39,8 @@ function problemResponses(codes: readonly ProblemCode[]) {
 /** The OpenAPI 3.1 document of the service, made from the schemas that validate the requests. */
 export function interfaceDocument(version: string): object {
   const registry = new OpenAPIRegistry();
+  // First, so that each shared shape carries its own words and not those of the place where it is met first.
+  for (const [name, shape] of Object.entries(sharedShapes)) registry.register(name, shape);
   const everyCall = (Object.keys(problemCatalogue) as ProblemCode[]).filter(
     (code) => code !== "unknown-path" && code !== "method-not-allowed",
   );
@@ -46,18 +52,19 @@ export function interfaceDocument(version: string): object {
       summary: call.summary,
       description: call.description,
       tags: ["corrections"],
-      request: { body: { required: true, content: json(call.request) } },
+      request: { body: { required: true, content: json(call.request, requestExamples[call.path]) } },
       responses: { 200: { description: "The answer.", content: json(call.response) }, ...problemResponses(everyCall) },
     });
   }
   const state = z.strictObject({ status: z.string() }).openapi("ServiceState");
-  const plain = (path: string, operationId: string, summary: string, responses: object) =>
+  const plain = (path: string, operationId: string, summary: string, responses: object, request?: object) =>
     registry.registerPath({
       method: "get",
       path,
       operationId,
       summary,
       tags: ["service"],
+      ...(request === undefined ? {} : { request }),
       responses: responses as never,
     });
   plain("/healthz", "getHealth", "Is the process alive", { 200: { description: "It is.", content: json(state) } });
@@ -79,6 +86,30 @@ export function interfaceDocument(version: string): object {
   plain("/openapi.json", "getInterfaceDocument", "This document", {
     200: { description: "OpenAPI 3.1.", content: json(z.looseObject({})) },
   });
+  plain("/docs", "getDocumentPage", "This document as a page", {
+    200: { description: "A page without script.", content: page },
+  });
+  const kind = z
+    .strictObject({
+      type: z.string().openapi({ description: "What problem details carry as `type`; the address of its page." }),
+      status: z.int(),
+      title: z.string(),
+      remedy: z.string().openapi({ description: "What to do about it." }),
+    })
+    .openapi("ProblemKind");
+  const noticeKind = z.strictObject({ code: z.string(), meaning: z.string() }).openapi("NoticeKind");
+  const catalogue = z.strictObject({ problems: z.array(kind), notices: z.array(noticeKind) }).openapi("Catalogue");
+  const either = "A page, or JSON where `Accept` asks for application/json.";
+  plain("/problems", "getProblems", "The catalogue of problems and notices", {
+    200: { description: either, content: { ...json(catalogue), ...page } },
+  });
+  plain(
+    "/problems/{code}",
+    "getProblem",
+    "One kind of problem",
+    { 200: { description: either, content: { ...json(kind), ...page } }, ...problemResponses(["unknown-path"]) },
+    { params: z.strictObject({ code: z.enum(Object.keys(problemCatalogue)) }) },
+  );
   return new OpenApiGeneratorV31(registry.definitions).generateDocument({
     openapi: "3.1.0",
     info: {

@@ -19,38 +19,66 @@ export class ChebyshevBasis {
   }
 
   /** Coefficients c_0 ... c_degree (c_0 not halved) of the interpolant through `values` at `points`. */
-  coefficients(values: ArrayLike<number>): Float64Array {
-    const n = this.count;
-    const out = new Float64Array(n);
-    for (let j = 0; j < n; j++) {
-      let sum = 0;
-      for (let k = 0; k < n; k++) sum += this.#cosines[j * n + k]! * values[k]!;
-      out[j] = sum;
-    }
+  coefficients(values: Float64Array): Float64Array {
+    const out = new Float64Array(this.count);
+    this.coefficientsInto(values, 0, out, 0);
     return out;
+  }
+
+  /** The same from values[from ..] to out[at ..]. */
+  coefficientsInto(values: Float64Array, from: number, out: Float64Array, at: number): void {
+    for (let j = 0; j < this.count; j++) out[at + j] = this.coefficient(j, values, from);
+  }
+
+  /** Coefficient j alone. */
+  coefficient(j: number, values: Float64Array, from: number): number {
+    const n = this.count;
+    const cosines = this.#cosines;
+    const row = j * n;
+    let sum = 0;
+    for (let k = 0; k < n; k++) sum += cosines[row + k]! * values[from + k]!;
+    return sum;
   }
 }
 
 /** Coefficients of the antiderivative that is zero at x = -1; one more than given. */
 export function antiderivative(c: Float64Array): Float64Array {
-  const n = c.length;
-  const out = new Float64Array(n + 1);
-  for (let j = 1; j <= n; j++) {
-    const before = j === 1 ? 2 * c[0]! : c[j - 1]!;
-    out[j] = (before - (c[j + 1] ?? 0)) / (2 * j);
-  }
-  let atMinusOne = 0;
-  for (let j = 1; j <= n; j++) atMinusOne += j % 2 === 0 ? out[j]! : -out[j]!;
-  out[0] = -atMinusOne;
+  const out = new Float64Array(c.length + 1);
+  antiderivativeInto(c, 0, c.length, 1, out, 0);
   return out;
 }
 
+/** The same of `scale` times the n coefficients at c[from ..], n + 1 of them to out[at ..]. */
+export function antiderivativeInto(
+  c: Float64Array,
+  from: number,
+  n: number,
+  scale: number,
+  out: Float64Array,
+  at: number,
+): void {
+  let atMinusOne = 0;
+  // c_0 is not halved, so it counts twice.
+  let before = 2 * scale * c[from]!;
+  let here = n > 1 ? scale * c[from + 1]! : 0;
+  for (let j = 1; j <= n; j++) {
+    const after = j + 1 < n ? scale * c[from + j + 1]! : 0;
+    const value = (before - after) / (2 * j);
+    out[at + j] = value;
+    atMinusOne += j % 2 === 0 ? value : -value;
+    before = here;
+    here = after;
+  }
+  out[at] = -atMinusOne;
+}
+
 /** Value of a series at x in [-1, 1] (Clenshaw). */
-export function evaluateSeries(c: ArrayLike<number>, x: number, offset = 0, count = c.length): number {
+export function evaluateSeries(c: Float64Array, x: number, offset = 0, count = c.length): number {
+  const twice = 2 * x;
   let b1 = 0;
   let b2 = 0;
   for (let j = offset + count - 1; j > offset; j--) {
-    const b = 2 * x * b1 - b2 + c[j]!;
+    const b = twice * b1 - b2 + c[j]!;
     b2 = b1;
     b1 = b;
   }

@@ -69,12 +69,18 @@ export function accumulateKnot(
   const positionRate = a * twice - 2 * slope * l2;
   const velocity = d * l2;
   const velocityRate = l2 + d * twice;
-  for (let k = 0; k < 3; k++) {
-    const p = values[at + k]!;
-    const v = values[at + 3 + k]!;
-    out[k]! += position * p + velocity * v;
-    out[k + 3]! += positionRate * p + velocityRate * v;
-  }
+  const x = values[at]!;
+  const y = values[at + 1]!;
+  const z = values[at + 2]!;
+  const vx = values[at + 3]!;
+  const vy = values[at + 4]!;
+  const vz = values[at + 5]!;
+  out[0]! += position * x + velocity * vx;
+  out[1]! += position * y + velocity * vy;
+  out[2]! += position * z + velocity * vz;
+  out[3]! += positionRate * x + velocityRate * vx;
+  out[4]! += positionRate * y + velocityRate * vy;
+  out[5]! += positionRate * z + velocityRate * vz;
 }
 
 /** Derivative at knot `at` of the polynomial through knots first ... first + points - 1 (values at stride * knot + k). */

@@ -1,4 +1,4 @@
-export { antiderivative, ChebyshevBasis, evaluateSeries } from "./chebyshev.ts";
+export { antiderivative, antiderivativeInto, ChebyshevBasis, evaluateSeries } from "./chebyshev.ts";
 export { addToTwoPart, multiplyTwoPart, type TwoPart, twoProduct, twoSum } from "./errorfree.ts";
 export { accumulateKnot, interpolateStates, lagrangeStates, slopeAtKnot } from "./hermite.ts";
 export { TabulatedFunction } from "./tabulated.ts";

@@ -1,5 +1,5 @@
 import { EarthAxes, type EarthOrientation } from "../bodies/index.ts";
-import { at, type Notice } from "../problem/index.ts";
+import { at, type Notice, Problem } from "../problem/index.ts";
 import { compareInstants, type Instant } from "../time/index.ts";
 import { buildSurface, buildTrack } from "./buildGround.ts";
 import { buildEphemeris, buildTable } from "./buildTable.ts";
@@ -24,6 +24,23 @@ export function buildTrajectory(
   orientation: EarthOrientation,
   moment: Instant,
 ): Trajectory {
+  const { place } = description;
+  if (place === undefined) return buildKind(description, orientation, moment);
+  try {
+    const trajectory = buildKind(description, orientation, moment);
+    if (trajectory.faultPlace !== undefined) trajectory.faultPlace = ["trajectory", ...place];
+    return trajectory;
+  } catch (error) {
+    if (!(error instanceof Problem)) throw error;
+    throw new Problem(
+      error.code,
+      error.message,
+      error.faults.map((fault) => ({ ...fault, place })),
+    );
+  }
+}
+
+function buildKind(description: TrajectoryDescription, orientation: EarthOrientation, moment: Instant): Trajectory {
   switch (description.kind) {
     case "state-vector":
       return buildPropagated(description, orientation);
@@ -76,7 +93,17 @@ function buildPhases({ parts }: DescriptionOf<"phases">, orientation: EarthOrien
     const place = ["parts", i, "trajectory"];
     const trajectory = at(place, () => buildTrajectory(description, orientation, from));
     notices.push(...trajectory.notices.map((notice) => ({ ...notice, place: [...place, ...(notice.place ?? [])] })));
+    if (trajectory.faultPlace !== undefined) {
+      trajectory.faultPlace = ["trajectory", "parts", i, ...trajectory.faultPlace];
+    }
     const last = parts[i + 1]?.from ?? trajectory.last;
+    if (last !== null && compareInstants(last, from) <= 0) {
+      throw impossibleTable(
+        ["parts", i],
+        `Part ${i} begins after the end of its trajectory.`,
+        "an instant before the end of the part's own trajectory",
+      );
+    }
     if (trajectory.first !== null && compareInstants(from, trajectory.first) < 0) {
       throw impossibleTable(
         [...place.slice(0, 2), "from"],

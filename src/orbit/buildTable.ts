@@ -155,7 +155,8 @@ export function buildEphemeris(
   const holds = (run: typeof ordered): boolean =>
     compareInstants(run[0]!.segment.first, moment) <= 0 && compareInstants(moment, run.at(-1)!.segment.last) <= 0;
   const chosen = runs.find(holds) ?? runs[0]!;
-  const notices: Notice[] = chosen.flatMap(({ table }) => table.notices);
+  // A message has no places of its own for what is said of its states.
+  const notices: Notice[] = chosen.flatMap(({ table }) => table.notices.map(({ code, text }) => ({ code, text })));
   if (runs.length > 1) {
     const span = [chosen[0]!.segment.first, chosen.at(-1)!.segment.last].map(
       (end) => `${formatInstant(end, "TAI", defaultLeapSeconds)} TAI`,

@@ -1,4 +1,5 @@
 import type { Vec3 } from "../numeric/index.ts";
+import type { Place } from "../problem/index.ts";
 import type { Instant } from "../time/index.ts";
 import type { Frame, Kinematics } from "./frames.ts";
 import type { MeanElements } from "./meanElements.ts";
@@ -42,8 +43,13 @@ export interface SegmentDescription extends TableDescription {
   readonly errors: readonly { readonly epoch: Instant; readonly error: StateError }[];
 }
 
-/** A trajectory as described by a user, in SI. */
-export type TrajectoryDescription =
+/**
+ * A trajectory as described by a user, in SI. `place`: where all faults of it are told, when it comes from a text that has
+ * no places of its own (inside the trajectory).
+ */
+export type TrajectoryDescription = PlainDescription & { readonly place?: Place };
+
+type PlainDescription =
   | ({
       readonly kind: "state-vector";
       readonly frame: Frame;

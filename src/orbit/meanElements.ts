@@ -1,7 +1,7 @@
 import { json2satrec, type SatRec, sgp4 } from "satellite.js";
 import type { EarthAxes } from "../bodies/index.ts";
 import { multiply, type Vec3 } from "../numeric/index.ts";
-import { type Notice, Problem } from "../problem/index.ts";
+import { type Notice, type Place, Problem } from "../problem/index.ts";
 import { addSeconds, defaultLeapSeconds, formatInstant, type Instant } from "../time/index.ts";
 import { DAY, GM_EARTH, KM } from "../units/index.ts";
 import { osculatingElements } from "./elements.ts";
@@ -40,6 +40,7 @@ export class MeanElementTrajectory implements Trajectory {
   readonly first: Instant;
   readonly last: Instant;
   readonly axes: EarthAxes;
+  faultPlace: Place = ["trajectory"];
   readonly notices: readonly Notice[];
   readonly implausible = false;
   readonly coarse = false;
@@ -107,7 +108,7 @@ export class MeanElementTrajectory implements Trajectory {
     return new Problem(
       "impossible-state",
       `The mean elements cannot be followed to ${at} TAI: ${why}.`,
-      [{ place: ["trajectory"], expected: "instants for which the elements still describe an orbit" }],
+      [{ place: this.faultPlace, expected: "instants for which the elements still describe an orbit" }],
       true,
     );
   }

@@ -1,6 +1,6 @@
 import type { EarthAxes } from "../bodies/index.ts";
 import { accumulateKnot, type Vec3 } from "../numeric/index.ts";
-import { type Notice, Problem } from "../problem/index.ts";
+import { type Notice, type Place, Problem } from "../problem/index.ts";
 import { addSeconds, defaultLeapSeconds, formatInstant, type Instant } from "../time/index.ts";
 import { DAY, GM_EARTH } from "../units/index.ts";
 import { type OsculatingElements, osculatingElements } from "./elements.ts";
@@ -37,6 +37,7 @@ export class PropagatedTrajectory implements Trajectory {
   readonly first: Instant;
   readonly last: Instant;
   readonly axes: EarthAxes;
+  faultPlace: Place = ["trajectory", "velocityKmPerS"];
   readonly notices: readonly Notice[];
   readonly implausible: boolean;
   readonly coarse = false;
@@ -75,7 +76,7 @@ export class PropagatedTrajectory implements Trajectory {
 
   extend(from: number, to: number): void {
     const h = this.#path.step;
-    if (Math.max(-from, to) / h > mostSteps) throw tooLow(h);
+    if (Math.max(-from, to) / h > mostSteps) throw tooLow(h, this.faultPlace);
     const after = Math.floor(to / h) + 3;
     const before = Math.floor(from / h) - 2;
     const reachedAfter = this.#path.growTo(Math.max(0, after), belongs);
@@ -106,7 +107,7 @@ export class PropagatedTrajectory implements Trajectory {
       `The propagated path reaches the ${where}`,
       [
         {
-          place: ["trajectory", "velocityKmPerS"],
+          place: this.faultPlace,
           expected: "a state whose path stays outside the Earth and within 1 500 000 km of it, or readings before that",
         },
       ],
@@ -179,14 +180,14 @@ function stepFor(elements: OsculatingElements, position: Vec3): number {
   return step;
 }
 
-function tooLow(step: number): Problem {
+function tooLow(step: number, place: Place): Problem {
   const days = Math.floor((mostSteps * step) / DAY);
   return new Problem(
     "impossible-state",
     `The orbit passes so near to the Earth's centre that it can be propagated for ${days} days only.`,
     [
       {
-        place: ["trajectory"],
+        place,
         expected: `a state whose perigee lies outside the Earth, or readings within ${days} days of its epoch`,
       },
     ],

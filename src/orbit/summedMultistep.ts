@@ -55,13 +55,14 @@ class Branch {
   readonly #h: number;
   readonly #force: ForceModel;
   readonly #moment: ForceMoment;
-  /** Ring of the last accelerations. */
-  readonly #accelerations = new Float64Array(3 * window);
-  #newest = 0;
+  /** The last accelerations, oldest first, from #oldest on; moved to the front when the end is reached. */
+  readonly #accelerations = new Float64Array(3 * window * 16);
+  #oldest = 0;
   /** First and second sums with their compensations: x, y, z each. */
   readonly #sum1 = new Float64Array(6);
   readonly #sum2 = new Float64Array(6);
   readonly #trial = new Float64Array(3);
+  readonly #weighted = new Float64Array(3);
   states: Float64Array;
   count: number;
   ended = false;
@@ -78,51 +79,71 @@ class Branch {
       const s = 6 * i;
       force.acceleration(this.#moment, start[s]!, start[s + 1]!, start[s + 2]!, this.#accelerations, 3 * i);
     }
-    this.#newest = order;
     const last = 6 * order;
+    this.#weigh(velocityWeights);
+    for (let d = 0; d < 3; d++) this.#sum1[d] = start[last + 3 + d]! / h - this.#weighted[d]!;
+    this.#weigh(positionWeights);
     for (let d = 0; d < 3; d++) {
-      this.#sum1[d] = start[last + 3 + d]! / h - this.#weighted(velocityWeights, d);
-      this.#sum2[d] = start[last + d]! / (h * h) - this.#weighted(positionWeights, d) + this.#sum1[d]!;
+      this.#sum2[d] = start[last + d]! / (h * h) - this.#weighted[d]! + this.#sum1[d]!;
     }
   }
 
-  #weighted(weights: Float64Array, d: number): number {
-    let sum = 0;
+  /** Writes the sum of the last accelerations with these weights (newest first), x, y and z, to #weighted. */
+  #weigh(weights: Float64Array): void {
+    const accelerations = this.#accelerations;
+    let x = 0;
+    let y = 0;
+    let z = 0;
+    let at = this.#oldest;
     for (let i = order; i >= 0; i--) {
-      const slot = this.#newest - i;
-      sum += weights[i]! * this.#accelerations[3 * (slot < 0 ? slot + window : slot) + d]!;
+      const weight = weights[i]!;
+      x += weight * accelerations[at]!;
+      y += weight * accelerations[at + 1]!;
+      z += weight * accelerations[at + 2]!;
+      at += 3;
     }
-    return sum;
+    this.#weighted[0] = x;
+    this.#weighted[1] = y;
+    this.#weighted[2] = z;
+  }
+
+  /** Writes the position that the second sums and the weighted accelerations give to #trial. */
+  #place(weights: Float64Array): void {
+    this.#weigh(weights);
+    const h2 = this.#h * this.#h;
+    for (let d = 0; d < 3; d++) {
+      this.#trial[d] = h2 * (this.#sum2[d]! + (this.#sum2[d + 3]! + this.#weighted[d]!));
+    }
   }
 
   /** One step further: predict, evaluate, correct, evaluate. */
   advance(): void {
     const h = this.#h;
-    const h2 = h * h;
     const trial = this.#trial;
-    for (let d = 0; d < 3; d++) {
-      trial[d] = h2 * (this.#sum2[d]! + (this.#sum2[d + 3]! + this.#weighted(predictorWeights, d)));
-    }
+    const accelerations = this.#accelerations;
+    this.#place(predictorWeights);
     const n = this.count;
     this.#force.moment(n * h, this.#moment);
-    this.#newest = this.#newest + 1 === window ? 0 : this.#newest + 1;
-    const slot = 3 * this.#newest;
-    const accelerations = this.#accelerations;
-    this.#force.acceleration(this.#moment, trial[0]!, trial[1]!, trial[2]!, accelerations, slot);
-    for (let d = 0; d < 3; d++) {
-      trial[d] = h2 * (this.#sum2[d]! + (this.#sum2[d + 3]! + this.#weighted(positionWeights, d)));
+    this.#oldest += 3;
+    if (this.#oldest + 3 * window > accelerations.length) {
+      accelerations.copyWithin(0, this.#oldest);
+      this.#oldest = 0;
     }
-    this.#force.acceleration(this.#moment, trial[0]!, trial[1]!, trial[2]!, accelerations, slot);
+    const newest = this.#oldest + 3 * order;
+    this.#force.acceleration(this.#moment, trial[0]!, trial[1]!, trial[2]!, accelerations, newest);
+    this.#place(positionWeights);
+    this.#force.acceleration(this.#moment, trial[0]!, trial[1]!, trial[2]!, accelerations, newest);
     if (6 * (n + 1) > this.states.length) {
       const grown = new Float64Array(2 * this.states.length);
       grown.set(this.states);
       this.states = grown;
     }
+    this.#weigh(velocityWeights);
     const at = 6 * n;
     for (let d = 0; d < 3; d++) {
-      accumulate(this.#sum1, d, accelerations[slot + d]!);
+      accumulate(this.#sum1, d, accelerations[newest + d]!);
       this.states[at + d] = trial[d]!;
-      this.states[at + 3 + d] = h * (this.#sum1[d]! + (this.#sum1[d + 3]! + this.#weighted(velocityWeights, d)));
+      this.states[at + 3 + d] = h * (this.#sum1[d]! + (this.#sum1[d + 3]! + this.#weighted[d]!));
       accumulate(this.#sum2, d, this.#sum1[d]!);
       this.#sum2[d + 3]! += this.#sum1[d + 3]!;
     }

@@ -1,5 +1,5 @@
 import type { EarthAxes } from "../bodies/index.ts";
-import type { Notice, Problem } from "../problem/index.ts";
+import type { Notice, Place, Problem } from "../problem/index.ts";
 import type { Instant } from "../time/index.ts";
 
 /** Position and velocity in GCRF: x, y, z in metres, then m/s. Written into a caller's array to spare memory. */
@@ -53,6 +53,8 @@ export interface Trajectory {
   extend(from: number, to: number): void;
   /** Memory held by the path, where it is much. */
   bytes?(): number;
+  /** Where faults are told that are found while the path is followed, from the top of the request. */
+  faultPlace?: Place;
   /** What to tell of a time beyond the path's own end, which extending found. */
   leaves?(t: number): Problem;
   /** Writes the state at t, inside what was extended to. */

@@ -1,4 +1,4 @@
-import { antiderivative, ChebyshevBasis, evaluateSeries } from "../numeric/index.ts";
+import { antiderivativeInto, ChebyshevBasis, evaluateSeries } from "../numeric/index.ts";
 import { innermost, type Trajectory } from "../orbit/index.ts";
 import { invariant, Problem } from "../problem/index.ts";
 import { C2 } from "../units/index.ts";
@@ -43,7 +43,9 @@ export class ProperTime {
   readonly #reader: EnvironmentReader;
   readonly #origin: number;
   readonly #pieces = new Map<number, Piece>();
-  readonly #samples: readonly Float64Array[];
+  /** Rates at the points of the segment in work, `points` a term, and their coefficients. */
+  readonly #samples: Float64Array;
+  readonly #coefficients = new Float64Array(points);
   /** First and last piece that are built; empty while first > last. */
   #first: number;
   #last: number;
@@ -61,7 +63,7 @@ export class ProperTime {
     this.#origin = this.#pieceOf(origin);
     this.#first = this.#origin;
     this.#last = this.#origin - 1;
-    this.#samples = this.#integrated.map(() => new Float64Array(points));
+    this.#samples = new Float64Array(points * this.#integrated.length);
   }
 
   /** Memory held by the integral and its path, roughly. */
@@ -166,25 +168,38 @@ export class ProperTime {
   /** One segment, or the place where it must be cut. */
   #segment(a: number, b: number, cut: number | null): Segment | number {
     const halfLength = (b - a) / 2;
-    const count = this.#integrated.length;
+    const integrated = this.#integrated;
+    const count = integrated.length;
+    const samples = this.#samples;
+    const reader = this.#reader;
     for (let p = 0; p < points; p++) {
       // At the very ends of a stretch the points stay inside it.
-      const environment = this.#reader.read(a + halfLength * (1 + basis.points[p]!));
+      const environment = reader.read(a + halfLength * (1 + basis.points[p]!));
       if (!(environment.speedSquared < C2)) throw impossiblePath("the path would reach the speed of light");
       if (!(environment.distance > innermost - 10e3)) throw impossiblePath("the path would pass through the Earth");
-      for (let k = 0; k < count; k++) this.#samples[k]![p] = this.#integrated[k]!.term.rate(environment);
+      for (let k = 0; k < count; k++) samples[k * points + p] = integrated[k]!.term.rate(environment);
     }
-    const series = new Float64Array(this.#integrated.length * width);
-    const gain = new Float64Array(this.#integrated.length);
-    for (let k = 0; k < gain.length; k++) {
-      const c = basis.coefficients(this.#samples[k]!);
-      if (cut !== null && (Math.abs(c[degree - 1]!) + Math.abs(c[degree]!)) * halfLength > tolerance) return cut;
-      for (let j = 0; j < points; j++) c[j] = c[j]! * halfLength;
-      const integral = antiderivative(c);
-      series.set(integral, k * width);
-      gain[k] = evaluateSeries(integral, 1);
+    if (cut !== null && this.#leaves(halfLength) > tolerance) return cut;
+    const c = this.#coefficients;
+    const series = new Float64Array(count * width);
+    const gain = new Float64Array(count);
+    for (let k = 0; k < count; k++) {
+      basis.coefficientsInto(samples, k * points, c, 0);
+      antiderivativeInto(c, 0, points, halfLength, series, k * width);
+      gain[k] = evaluateSeries(series, 1, k * width, width);
     }
     return { start: a, end: b, series, gain };
+  }
+
+  /** What the last two coefficients leave at most in any term, s. */
+  #leaves(halfLength: number): number {
+    let most = 0;
+    for (let at = 0; at < this.#samples.length; at += points) {
+      const last = basis.coefficient(degree, this.#samples, at);
+      const before = basis.coefficient(degree - 1, this.#samples, at);
+      most = Math.max(most, (Math.abs(before) + Math.abs(last)) * halfLength);
+    }
+    return most;
   }
 }
 

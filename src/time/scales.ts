@@ -63,6 +63,76 @@ function whyNotAnInstant(text: string, scale: Scale): string {
     : "ISO 8601 with up to 12 decimals and no Z, for example 2026-03-01T00:00:37";
 }
 
+/** Day numbers of the first of each month, 1972 to 2100 and one more. */
+const monthStarts = Int32Array.from({ length: 12 * 129 + 1 }, (_, i) =>
+  dayNumber(1972 + Math.floor(i / 12), 1 + (i % 12), 1),
+);
+
+const powersOfTen = Float64Array.from({ length: 13 }, (_, i) => Number(`1e${i}`));
+
+/**
+ * A UTC text of the usual shape, YYYY-MM-DDTHH:MM:SS with up to 12 decimals and Z, by its character codes. Null for all
+ * that needs a closer look: what is wrong, other shapes, and the last second of a day.
+ */
+function readUsualUtc(text: string, leapSeconds: LeapSecondTable): Instant | null {
+  const end = text.length - 1;
+  if (!(end >= 19 && end <= 32) || end === 20 || text.charCodeAt(end) !== 90) return null;
+  if (text.charCodeAt(4) !== 45 || text.charCodeAt(7) !== 45 || text.charCodeAt(10) !== 84) return null;
+  if (text.charCodeAt(13) !== 58 || text.charCodeAt(16) !== 58) return null;
+  const y3 = text.charCodeAt(0) - 48;
+  const y2 = text.charCodeAt(1) - 48;
+  const y1 = text.charCodeAt(2) - 48;
+  const y0 = text.charCodeAt(3) - 48;
+  const m1 = text.charCodeAt(5) - 48;
+  const m0 = text.charCodeAt(6) - 48;
+  const d1 = text.charCodeAt(8) - 48;
+  const d0 = text.charCodeAt(9) - 48;
+  const h1 = text.charCodeAt(11) - 48;
+  const h0 = text.charCodeAt(12) - 48;
+  const n1 = text.charCodeAt(14) - 48;
+  const n0 = text.charCodeAt(15) - 48;
+  const s1 = text.charCodeAt(17) - 48;
+  const s0 = text.charCodeAt(18) - 48;
+  // The sign bit of d | 9 - d is set where d is no digit.
+  let bad = y3 | (9 - y3) | y2 | (9 - y2) | y1 | (9 - y1) | y0 | (9 - y0) | m1 | (9 - m1) | m0 | (9 - m0);
+  bad |= d1 | (9 - d1) | d0 | (9 - d0) | h1 | (9 - h1) | h0 | (9 - h0);
+  bad |= n1 | (9 - n1) | n0 | (9 - n0) | s1 | (9 - s1) | s0 | (9 - s0);
+  let picoseconds = 0;
+  if (end > 20) {
+    if (text.charCodeAt(19) !== 46) return null;
+    // Two halves of at most six digits, so that each is a small integer.
+    let upper = 0;
+    let lower = 0;
+    const middle = Math.min(end, 26);
+    for (let i = 20; i < middle; i++) {
+      const digit = text.charCodeAt(i) - 48;
+      bad |= digit | (9 - digit);
+      upper = 10 * upper + digit;
+    }
+    for (let i = middle; i < end; i++) {
+      const digit = text.charCodeAt(i) - 48;
+      bad |= digit | (9 - digit);
+      lower = 10 * lower + digit;
+    }
+    picoseconds = upper * powersOfTen[32 - middle]! + lower * powersOfTen[32 - end]!;
+  }
+  const year = 1000 * y3 + 100 * y2 + 10 * y1 + y0;
+  const month = 10 * m1 + m0;
+  const hour = 10 * h1 + h0;
+  const minute = 10 * n1 + n0;
+  const second = 10 * s1 + s0;
+  if (bad < 0 || year < 1972 || year > 2100 || month < 1 || month > 12) return null;
+  if (hour > 23 || minute > 59 || second > 59) return null;
+  const dayOfMonth = 10 * d1 + d0;
+  const monthIndex = 12 * (year - 1972) + month - 1;
+  const day = monthStarts[monthIndex]! + dayOfMonth - 1;
+  if (dayOfMonth < 1 || day >= monthStarts[monthIndex + 1]!) return null;
+  const secondOfDay = 3600 * hour + 60 * minute + second;
+  // Whether 23:59:59 existed is for the leap-second table to say.
+  if (secondOfDay === 86_399) return null;
+  return { seconds: day * 86_400 + secondOfDay + leapSeconds.offsetOnDay(day), picoseconds };
+}
+
 /**
  * Reads ISO 8601, calendar date or day of year, up to 12 decimals, in the given scale. UTC ends in Z, other scales have
  * no suffix. 23:59:60 is read where the table has a leap second; in GLONASS time it is 02:59:60 of the next day.
@@ -70,6 +140,11 @@ function whyNotAnInstant(text: string, scale: Scale): string {
  * Errors: invalid-instant (shape, day, time that never was), instant-out-of-range (before 1972 or after 2100).
  */
 export function parseInstant(text: string, scale: Scale, leapSeconds: LeapSecondTable): Instant {
+  return (scale === "UTC" ? readUsualUtc(text, leapSeconds) : null) ?? parseAnyInstant(text, scale, leapSeconds);
+}
+
+/** The same without the short way for usual texts. */
+export function parseAnyInstant(text: string, scale: Scale, leapSeconds: LeapSecondTable): Instant {
   const m = shape.exec(text);
   if (!m) throw unreadable(text, whyNotAnInstant(text, scale));
   const [, yearText, monthText, dayText, ordinalText, hourText, minuteText, secondText, decimals = "", suffix] = m;
@@ -157,6 +232,31 @@ function outOfRange(text: string): Problem {
 
 const twoDigits = Array.from({ length: 100 }, (_, n) => String(n).padStart(2, "0"));
 const two = (n: number): string => twoDigits[n]!;
+const threeDigits = Array.from({ length: 1000 }, (_, n) => String(n).padStart(3, "0"));
+/** "HH:MM:" of the minute of a day. */
+const minutesOfDay = Array.from({ length: 1440 }, (_, n) => `${two(Math.floor(n / 60))}:${two(n % 60)}:`);
+
+/** "YYYY-MM-DDT" of a day number; the last one is kept, because most texts follow one of the same day. */
+function dateText(day: number): string {
+  if (day !== lastDay) {
+    const date = calendarDate(day);
+    const year = date.year > 999 ? date.year : String(date.year).padStart(4, "0");
+    lastDateText = `${year}-${two(date.month)}-${two(date.day)}T`;
+    lastDay = day;
+  }
+  return lastDateText;
+}
+let lastDay = Number.NaN;
+let lastDateText = "";
+
+/** Twelve decimals. */
+function decimals(picoseconds: number): string {
+  const upper = Math.floor(picoseconds / 1e6);
+  const lower = picoseconds - upper * 1e6;
+  const a = Math.floor(upper / 1000);
+  const b = Math.floor(lower / 1000);
+  return threeDigits[a]! + threeDigits[upper - a * 1000]! + (threeDigits[b]! + threeDigits[lower - b * 1000]!);
+}
 
 /** The instant in a scale, with twelve decimals; UTC ends in Z. The inverse of parseInstant. */
 export function formatInstant(instant: Instant, scale: Scale, leapSeconds: LeapSecondTable): string {
@@ -184,16 +284,10 @@ export function formatInstant(instant: Instant, scale: Scale, leapSeconds: LeapS
     day = Math.floor(total / 86_400);
     secondOfDay = total - day * 86_400;
   }
-  const date = calendarDate(day);
   // A leap second carries the number 60 of the minute before.
-  if (leap) secondOfDay--;
-  const hour = Math.floor(secondOfDay / 3600);
-  const minute = Math.floor((secondOfDay - hour * 3600) / 60);
-  if (leap) secondOfDay++;
-  const second = secondOfDay - hour * 3600 - minute * 60;
-  const fraction = String(picoseconds).padStart(12, "0");
-  const suffix = scale === "UTC" ? "Z" : "";
-  return `${date.year > 999 ? date.year : String(date.year).padStart(4, "0")}-${two(date.month)}-${two(date.day)}T${two(hour)}:${two(minute)}:${two(second)}.${fraction}${suffix}`;
+  const minute = leap ? Math.floor((secondOfDay - 1) / 60) : Math.floor(secondOfDay / 60);
+  const second = secondOfDay - minute * 60;
+  return `${dateText(day)}${minutesOfDay[minute]!}${two(second)}.${decimals(picoseconds)}${scale === "UTC" ? "Z" : ""}`;
 }
 
 /** Whether a moment lies inside a positive leap second. */

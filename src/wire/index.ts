@@ -20,6 +20,6 @@ export {
 } from "./correctionSchemas.ts";
 export { type Bench, corrections, plainBench, predictedReadings } from "./corrections.ts";
 export { type ProblemDetails, problemDetails } from "./problemDetails.ts";
-export { problemSchema } from "./sharedSchemas.ts";
+export { problemSchema, sharedShapes } from "./sharedSchemas.ts";
 export { parseJson } from "./validate.ts";
 export { z } from "./zod.ts";

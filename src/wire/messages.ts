@@ -113,7 +113,7 @@ export function readOem(text: string, leapSeconds: LeapSecondTable): ReadTraject
     const segments = message.segments.map((segment, i) =>
       inSegment(message, i, () => readSegment(segment, notices, leapSeconds)),
     );
-    return { description: { kind: "ephemeris", segments }, notices };
+    return { description: { kind: "ephemeris", segments, place: ["text"] }, notices };
   });
 }
 
@@ -151,9 +151,14 @@ function readSegment(segment: OemSegment, notices: Notice[], leapSeconds: LeapSe
       place: ["text"],
     });
   }
+  const frame = readFrame(metadata.refFrame);
+  const center = readCenter(metadata.centerName);
+  if (center === "Moon" && !["GCRF", "ICRF", "EME2000"].includes(frame)) {
+    throw unusable([], `${frame} is no frame about the Moon.`, "REF_FRAME ICRF, GCRF or EME2000");
+  }
   return {
-    frame: readFrame(metadata.refFrame),
-    center: readCenter(metadata.centerName),
+    frame,
+    center,
     states: read,
     first: epochOf(useableStartTime ?? startTime, leapSeconds),
     last: epochOf(useableStopTime ?? stopTime, leapSeconds),
@@ -194,6 +199,7 @@ export function readOpm(text: string, leapSeconds: LeapSecondTable): ReadTraject
         position: scaled([state.xKm, state.yKm, state.zKm]),
         velocity: scaled([state.xKmPerS, state.yKmPerS, state.zKmPerS]),
         error: error ?? nothingKnown,
+        place: ["text"],
       },
       notices,
     };
@@ -228,7 +234,7 @@ export function readOmm(
   }
   return at(place, () => {
     const { message, remarks } = given.text === undefined ? ommFromJson(given.omm) : parseOmm(given.text);
-    return { description: meanElements(message, leapSeconds), notices: remarkNotices(remarks, place) };
+    return { description: { ...meanElements(message, leapSeconds), place }, notices: remarkNotices(remarks, place) };
   });
 }
 

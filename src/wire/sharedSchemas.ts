@@ -123,3 +123,10 @@ export const problemSchema = z
       .optional(),
   })
   .openapi("Problem", { description: "Problem details, RFC 9457." });
+
+/** Shapes that many places share, by their names in the interface document. */
+export const sharedShapes = {
+  InstantIn: instantSchema,
+  Reading: readingSchema,
+  Scale: scaleSchema,
+} as const;

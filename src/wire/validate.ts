@@ -92,7 +92,13 @@ function unionExpectation(issue: Extract<Issue, { code: "invalid_union" }>, foun
 }
 
 const article = (type: string): string =>
-  type === "array" || type === "object" ? `an ${type}` : type === "string" ? "text" : `a ${type}`;
+  type === "record"
+    ? "a JSON object"
+    : type === "array" || type === "object"
+      ? `an ${type}`
+      : type === "string"
+        ? "text"
+        : `a ${type}`;
 
 function bound(origin: string, relation: string, limit: number | bigint): string {
   if (origin === "array") return `${relation} ${limit} entries`;

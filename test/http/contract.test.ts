@@ -1,7 +1,15 @@
 import { validate } from "@readme/openapi-parser";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
+import { problemCatalogue } from "../../src/problem/index.ts";
 import { physicalTermNames } from "../../src/relativity/index.ts";
-import { document, documentAllows, holdAgainstDocument, holdGoodAnswer, operation } from "../support/contract.ts";
+import {
+  document,
+  documentAllows,
+  holdAgainstDocument,
+  holdGoodAnswer,
+  holdProblem,
+  operation,
+} from "../support/contract.ts";
 import {
   altered,
   type Body,
@@ -332,6 +340,50 @@ describe("GET", () => {
     expect(head.headers["content-length"]).toBe(got.headers["content-length"]);
   });
 
+  it.each([
+    { path: "/docs", at: "/docs" },
+    { path: "/problems", at: "/problems" },
+    { path: "/problems/{code}", at: "/problems/outside-span" },
+  ])("$at as a page, and HEAD", async ({ path, at }) => {
+    const got = await send(service.address, at, undefined, { method: "GET", headers: { Accept: "text/html" } });
+    expect(got.status).toBe(200);
+    expect(got.text).toMatch(/^<!doctype html>/);
+    // To the document a page is a string; the check reads JSON.
+    holdAgainstDocument("GET", path, { ...got, headers: got.headers, text: JSON.stringify(got.text) } as typeof got);
+    const head = await send(service.address, at, undefined, { method: "HEAD" });
+    expect(head.headers["content-length"]).toBe(got.headers["content-length"]);
+    holdAgainstDocument("HEAD", path, head);
+  });
+
+  it("/problems as JSON is the catalogue, and the type of each problem resolves", async () => {
+    const json = { method: "GET", headers: { Accept: "application/json" } };
+    const list = await send(service.address, "/problems", undefined, json);
+    holdAgainstDocument("GET", "/problems", list);
+    const { problems } = JSON.parse(list.text) as { problems: { type: string }[] };
+    expect(problems.map(({ type }) => type)).toEqual(Object.keys(problemCatalogue).map((code) => `/problems/${code}`));
+    for (const problem of problems) {
+      const one = await send(service.address, problem.type, undefined, json);
+      holdAgainstDocument("GET", "/problems/{code}", one);
+      expect(JSON.parse(one.text)).toEqual(problem);
+    }
+  });
+
+  it.each(["/problems/no-such-code", "/problems/constructor", "/problems/", "/problems/%zz", "/docs/"])(
+    "%s is an unknown path",
+    async (path) => {
+      const documented = path === "/docs/" ? path : "/problems/{code}";
+      holdProblem("GET", documented, await send(service.address, path, undefined, { method: "GET" }), "unknown-path");
+    },
+  );
+
+  it("another method at a page is refused with those that it takes", async () => {
+    for (const path of ["/docs", "/problems", "/problems/outside-span"]) {
+      const response = await send(service.address, path, {});
+      holdProblem("POST", path, response, "method-not-allowed");
+      expect(response.headers.allow).toBe("GET, HEAD");
+    }
+  });
+
   it("/readyz names the leap-second table and its expiry", async () => {
     const { body } = await send(service.address, "/readyz", undefined, { method: "GET" });
     expect(body.status).toBe("ready");
@@ -355,14 +407,26 @@ describe("the interface document", () => {
 
   it("documents exactly the addresses that this test visits", () => {
     expect(Object.keys(document.paths).sort()).toEqual([
+      "/docs",
       "/healthz",
       "/openapi.json",
+      "/problems",
+      "/problems/{code}",
       "/readyz",
       "/v1/corrections",
       "/v1/drift-budgets",
       "/v1/predicted-readings",
       "/v1/time-conversions",
     ]);
+  });
+
+  it("has an example for each call, and each of them is answered", async () => {
+    for (const [path, { post: call }] of Object.entries(document.paths)) {
+      if (call === undefined) continue;
+      const { example } = call.requestBody!.content["application/json"] as { example?: object };
+      expect(example, path).toBeDefined();
+      holdGoodAnswer(path, example, await post(service.address, path, example));
+    }
   });
 
   it("shows the caution and the catalogue of problems", () => {

@@ -1,3 +1,4 @@
+import { geodeticToFixed } from "../../src/bodies/index.ts";
 import { durationToTicks, oscillatorTerms, rational } from "../../src/clock/index.ts";
 import { buildTrajectory, type KeplerianElements, type Trajectory, twoBodyState } from "../../src/orbit/index.ts";
 import { type PhysicalTermName, ProperTime, type RateTerm, rateTerms } from "../../src/relativity/index.ts";
@@ -32,6 +33,22 @@ export function restingRate(
 ): number {
   const clock = buildTrajectory({ kind: "surface", latitude, longitude, height, heightOf }, noOrientation, moment);
   return new ProperTime(clock, restingTerms, 0).rates(0).reduce((sum, rate) => sum + rate);
+}
+
+/** Mean rate by speed alone of a clock that is carried along a parallel (rad) at a speed due east (m/s), over an hour. */
+export function carriedRate(latitude: number, eastward: number): number {
+  const step = 60;
+  const [x, y] = geodeticToFixed(latitude, 0, 0);
+  const turn = (eastward * step) / Math.hypot(x, y);
+  const points = Array.from({ length: 61 }, (_, i) => ({
+    at: addSeconds(moment, step * i),
+    latitude,
+    longitude: turn * i,
+    height: 0,
+  }));
+  const track = buildTrajectory({ kind: "track", heightOf: "ellipsoid", points }, noOrientation, moment);
+  const [speedPart] = new ProperTime(track, termsNamed("velocity"), 0).between(0, step * 60);
+  return speedPart! / (step * 60);
 }
 
 /** Difference of rate between two heights (m) where gravity at the ellipsoid is `gravity` (m/s2). */

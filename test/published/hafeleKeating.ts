@@ -1,11 +1,19 @@
 import { durationFromNanoseconds, sumDurations, toNanoseconds } from "../../src/time/index.ts";
-import { lift } from "./bench.ts";
+import { DEGREE } from "../../src/units/index.ts";
+import { carriedRate, lift } from "./bench.ts";
 import type { Row } from "./row.ts";
 
 const paper = "Hafele & Keating 1972, Science 177, 166/168";
 
 /** What a clock gains at a height (m) in so many hours beside one at sea level, ns. */
 const gained = (height: number, hours: number): number => lift(9.8, 0, height) * hours * 3600 * 1e9;
+
+/** What a clock that is carried due east (m/s) along a parallel loses by its speed beside one at rest there, ns. */
+const byMotion = (eastward: number, latitudeDeg: number, hours: number): number =>
+  (carriedRate(latitudeDeg * DEGREE, eastward) - carriedRate(latitudeDeg * DEGREE, 0)) * hours * 3600 * 1e9;
+
+const meanFlight =
+  "The printed figure sums the legs of the real flights. One mean speed on one mean parallel, due east or west all the way, is all that is known here; it gives the sign and the size.";
 
 /** Sum of terms as an answer sums them, ns. */
 const net = (...parts: number[]): number => toNanoseconds(sumDurations(parts.map(durationFromNanoseconds)));
@@ -36,6 +44,32 @@ export const hafeleKeating: readonly Row[] = [
     source: `${paper} Table (179+-18)`,
     standing: "from memory",
     place: "orbit: surfaces at two heights where g = 9.8; relativity: ProperTime.rates",
+  },
+  {
+    id: "H03",
+    what: "part of the motion, flight eastward",
+    inputs: { v_mPerS: 243, latitudeDeg: 34, t_h: 41.2 },
+    published: -184,
+    got: () => byMotion(243, 34, 41.2),
+    tolerance: 18,
+    unit: "ns",
+    source: `${paper} Table (-184+-18)`,
+    standing: "from memory",
+    place: "orbit: a track along a parallel; relativity: ProperTime, the term velocity",
+    explained: meanFlight,
+  },
+  {
+    id: "H04",
+    what: "part of the motion, flight westward",
+    inputs: { v_mPerS: 218, latitudeDeg: 31, t_h: 48.6 },
+    published: 96,
+    got: () => byMotion(-218, 31, 48.6),
+    tolerance: 10,
+    unit: "ns",
+    source: `${paper} Table (96+-10)`,
+    standing: "from memory",
+    place: "orbit: a track along a parallel; relativity: ProperTime, the term velocity",
+    explained: meanFlight,
   },
   {
     id: "H05",

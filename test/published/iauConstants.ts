@@ -28,7 +28,7 @@ export const iauConstants: readonly Row[] = [
     source: "IAU 2000 Res. B1.9; IERS Conv. (2010) Table 1.1",
     standing: "read",
     place: "units: C2",
-    note: "Defining since 2000 and not to be computed again from a newer W0; the constant in use is row E06.",
+    note: "Defining since 2000 and not to be computed again from a newer W0; the constant in use is row V06.",
   },
   {
     id: "K05",
@@ -56,7 +56,7 @@ export const iauConstants: readonly Row[] = [
     place: "units: GM_EARTH, C2",
   },
   {
-    id: "E06",
+    id: "V06",
     what: "L_G as used by the term reference-surface",
     inputs: {},
     published: 6.969290134e-10,
@@ -68,7 +68,7 @@ export const iauConstants: readonly Row[] = [
     place: "units: constants.lG",
   },
   {
-    id: "E07",
+    id: "V07",
     what: "rotation of the Earth",
     inputs: {},
     published: 7.292115e-5,

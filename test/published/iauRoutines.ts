@@ -33,7 +33,7 @@ function celestialToTerrestrial(): readonly number[] {
  */
 export const iauRoutines: readonly Row[] = [
   {
-    id: "E01",
+    id: "V01",
     what: "nutation, IAU 2000B",
     inputs: { ttMjd: 53_736 },
     published: [-9.632552291148363e-6, 4.063197106621159e-5],
@@ -48,7 +48,7 @@ export const iauRoutines: readonly Row[] = [
     place: "bodies: nutation2000B",
   },
   {
-    id: "E02",
+    id: "V02",
     what: "Earth rotation angle",
     inputs: { ut1Mjd: 54_388 },
     published: 0.4022837240028158,
@@ -60,7 +60,7 @@ export const iauRoutines: readonly Row[] = [
     place: "bodies: earthRotationAngle",
   },
   {
-    id: "E03",
+    id: "V03",
     what: "Greenwich apparent sidereal time",
     inputs: { ttMjd: 53_736, ut1Mjd: 53_736 },
     published: 1.754166137675019,
@@ -73,7 +73,7 @@ export const iauRoutines: readonly Row[] = [
     note: "The vector uses nutation 2000A, the project 2000B: 1 mas = 5e-9 rad is allowed.",
   },
   {
-    id: "E04",
+    id: "V04",
     what: "celestial to terrestrial matrix",
     inputs: { ttMjd: 53_736, ut1Mjd: 53_736, xPole: 2.55060238e-7, yPole: 1.860359247e-6 },
     // biome-ignore format: one row of the matrix a line
@@ -91,7 +91,7 @@ export const iauRoutines: readonly Row[] = [
     note: "The vector uses nutation 2000A, the project 2000B: 1 mas = 5e-9 rad is allowed.",
   },
   {
-    id: "E05",
+    id: "V05",
     what: "geodetic to geocentric, WGS 84",
     inputs: { longitude: 3.1, latitude: -0.5, height_m: 2500 },
     published: [-5_599_000.557704994, 233_011.67223479203, -3_040_909.470698336],

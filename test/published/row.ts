@@ -18,6 +18,8 @@ export interface Row {
   /** Which code is exercised. */
   readonly place: string;
   readonly note?: string;
+  /** Why the published figure is not met and cannot be: such a row is shown and counted apart, and never fails. */
+  readonly explained?: string;
 }
 
 /** One number of a row held against its published figure. */

@@ -1,0 +1,2 @@
+export { documentPage } from "./documentPage.ts";
+export { problemPage, problemsPage } from "./problemPages.ts";
