@@ -11,4 +11,13 @@ export {
   ticksToDuration,
   wrap,
 } from "./counter.ts";
-export { type ClockTerm, type Oscillator, oscillatorSigmas, oscillatorTerms, properTime } from "./oscillator.ts";
+export {
+  type ClockTerm,
+  type FreeRun,
+  type Oscillator,
+  oscillatorSigmas,
+  oscillatorTerms,
+  properTime,
+  unbroken,
+} from "./oscillator.ts";
+export { compareSpans, distance, portion, spanFemtoseconds } from "./span.ts";

@@ -20,19 +20,32 @@ export interface Oscillator {
 
 /** A contribution of the clock itself to clock minus TT. */
 export interface ClockTerm {
-  readonly term: "offset" | "preset" | "frequency" | "aging" | "latch";
+  readonly term: "offset" | "preset" | "frequency" | "aging" | "event" | "latch";
   readonly label: string;
   /** d(clock - TT)/dTT. */
   readonly rate: number;
   readonly accumulated: Duration;
 }
 
+/** How long an oscillator has run freely since the anchor, by proper time, s; it may have been locked in between. */
+export interface FreeRun {
+  readonly total: TwoPart;
+  /** Sum of the squares of the single runs, s^2: the polynomial starts anew with each. */
+  readonly square: TwoPart;
+  /** Since the present run began; zero while locked. */
+  readonly since: number;
+}
+
+/** One run, without a break. */
+export const unbroken = (tau: TwoPart): FreeRun => ({ total: tau, square: multiplyTwoPart(tau, tau), since: tau.high });
+
 /**
  * The oscillator's terms after proper time tau (two doubles, s) since the anchor:
  * indicated = x0 + (1 + p)(tau + y0 tau + D tau^2/2). Frequency times tau is a product of two doubles each: one double
  * would be 16 fs off in ten days at 123 ppm. Only what was given is listed.
  */
-export function oscillatorTerms(oscillator: Oscillator | null, tau: TwoPart, tauRate: number): ClockTerm[] {
+export function oscillatorTerms(oscillator: Oscillator | null, free: FreeRun, tauRate: number): ClockTerm[] {
+  const tau = free.total;
   const out: ClockTerm[] = [];
   if (oscillator === null) return out;
   const { offset, preset, frequency, aging } = oscillator;
@@ -49,9 +62,8 @@ export function oscillatorTerms(oscillator: Oscillator | null, tau: TwoPart, tau
   }
   if (aging !== null) {
     const scaled = withPreset(aging / 2, p);
-    const square = multiplyTwoPart(tau, tau);
-    const rate = (1 + p) * aging * tau.high * tauRate;
-    list("aging", "Oscillator ageing", rate, multiplyTwoPart(square, scaled));
+    const rate = (1 + p) * aging * free.since * tauRate;
+    list("aging", "Oscillator ageing", rate, multiplyTwoPart(free.square, scaled));
   }
   return out;
 }
@@ -66,12 +78,16 @@ function withPreset(k: number, p: number): TwoPart {
 /** Proper time since the anchor from TT since the anchor and the accumulated relativity. */
 export const properTime = (tt: TwoPart, relativity: number): TwoPart => addToTwoPart(tt, relativity);
 
-/** Standard uncertainty items of the oscillator's model after tau seconds, s. */
-export function oscillatorSigmas(oscillator: Oscillator | null, tau: number): { source: string; sigma: number }[] {
+/** Standard uncertainty items of the oscillator's model after so many seconds of free running, s; `square` as in FreeRun. */
+export function oscillatorSigmas(
+  oscillator: Oscillator | null,
+  tau: number,
+  square: number,
+): { source: string; sigma: number }[] {
   if (oscillator === null) return [];
   const gain = 1 + (oscillator.preset ?? 0);
   const byFrequency = gain * tau;
-  const byAging = (gain * tau * tau) / 2;
+  const byAging = (gain * square) / 2;
   const out: { source: string; sigma: number }[] = [];
   if (oscillator.frequencySigma !== null) {
     out.push({ source: "frequency", sigma: Math.abs(byFrequency * oscillator.frequencySigma) });

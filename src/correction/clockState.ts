@@ -1,3 +1,4 @@
+import { compareSpans, tickSeconds } from "../clock/index.ts";
 import { Problem } from "../problem/index.ts";
 import {
   addDuration,
@@ -6,17 +7,25 @@ import {
   formatInstant,
   type Instant,
   isInLeapSecond,
+  subtractDurations,
   toSeconds,
 } from "../time/index.ts";
-import { clockMinusTt } from "./clockMinusTt.ts";
+import { clockMinusTt, stretchOf } from "./clockMinusTt.ts";
 import type { ClockState, Flag, Setting } from "./model.ts";
-import { combine, uncertaintyItems } from "./uncertainty.ts";
+import type { Stretch } from "./stretch.ts";
+import { combine, faceStep, uncertaintyItems } from "./uncertainty.ts";
 
 /** Everything that is said of the clock `elapsed` TT after the anchor. The instant lies inside the span. */
-export function clockStateAt(setting: Setting, elapsed: Duration, asRead: boolean, flags: readonly Flag[]): ClockState {
-  const { terms, total } = clockMinusTt(setting, elapsed, asRead, true);
+export function clockStateAt(
+  setting: Setting,
+  elapsed: Duration,
+  asRead: boolean,
+  flags: readonly Flag[],
+  stretch: Stretch | null = stretchOf(setting, elapsed),
+): ClockState {
+  const { terms, total } = clockMinusTt(setting, elapsed, asRead, true, stretch);
   const at = addDuration(setting.clock.anchor.at, elapsed);
-  const uncertainty = uncertaintyItems(setting, toSeconds(elapsed), asRead);
+  const uncertainty = uncertaintyItems(setting, toSeconds(elapsed), asRead, stretch);
   return {
     at,
     elapsed,
@@ -24,7 +33,7 @@ export function clockStateAt(setting: Setting, elapsed: Duration, asRead: boolea
     clockMinusTt: total,
     uncertainty,
     combinedSigma: combine(uncertainty),
-    flags: [...flags, ...commonFlags(setting, at)],
+    flags: [...flags, ...commonFlags(setting, at), ...eventFlags(setting, elapsed, stretch)],
   };
 }
 
@@ -36,6 +45,25 @@ function commonFlags({ trajectory, leapSeconds, clock, basis }: Setting, at: Ins
   if (trajectory.implausible) out.push("implausible-orbit");
   if (isInLeapSecond(at, leapSeconds)) out.push("leap-second");
   if (compareInstants(at, leapSeconds.expires) >= 0) out.push("leap-table-expired");
+  return out;
+}
+
+/** Flags that the clock's events bring. Those of a stretch hold for all of it. */
+function eventFlags({ timeline, clock }: Setting, elapsed: Duration, stretch: Stretch | null): Flag[] {
+  if (timeline === null || stretch === null) return [];
+  const out: Flag[] = [];
+  // One second, or one tick when that is longer. A reading whose tick was cut short by a jump may come just before it.
+  const step = clock.face.kind === "counter" ? tickSeconds(clock.face.ticksPerSecond) : (faceStep(clock.face) ?? 0);
+  const soon = Math.max(1, step);
+  const touched = timeline.jumps.some(({ elapsed: jump }) => {
+    if (Math.abs(elapsed.seconds - jump.seconds) > soon + 1) return false;
+    const since = toSeconds(subtractDurations(elapsed, jump));
+    return since < soon && (since >= 0 || (compareSpans(stretch.reference, jump) === 0 && since > -step));
+  });
+  if (touched) out.push("clock-event");
+  if (stretch.slew !== null) out.push("slewing");
+  if (stretch.locked) out.push("locked");
+  if (stretch.holdover) out.push("holdover");
   return out;
 }
 

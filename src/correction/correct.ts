@@ -1,4 +1,11 @@
-import { counterModulus, durationToTicks, oscillatorTerms, tickSeconds, ticksToDuration } from "../clock/index.ts";
+import {
+  counterModulus,
+  durationToTicks,
+  oscillatorTerms,
+  tickSeconds,
+  ticksToDuration,
+  unbroken,
+} from "../clock/index.ts";
 import { invariant, Problem } from "../problem/index.ts";
 import {
   addDuration,
@@ -6,31 +13,29 @@ import {
   type Duration,
   durationBetween,
   formatInstant,
-  isCovered,
   secondsBetween,
-  subtractDurations,
   sumDurations,
-  toSeconds,
   toTwoPartSeconds,
-  zeroDuration,
 } from "../time/index.ts";
 import { clockMinusTt, latchOf } from "./clockMinusTt.ts";
 import { clockStateAt, isInside, outsideSpan } from "./clockState.ts";
+import { correctThroughEvents } from "./eventReading.ts";
+import { fixedPoint } from "./fixedPoint.ts";
+import { beyondWidth, fits, indicatedSpan, roundedQuotient, whenInWords } from "./indication.ts";
 import type { CorrectedReading, Face, Flag, Reading, Setting, Unwrap } from "./model.ts";
 
 type CounterFace = Extract<Face, { kind: "counter" }>;
 
-/** The fixed point takes 2 steps at 1e-10, 3 at 1 ppm, 5 at 100 ppm. */
-const mostIterations = 12;
-
 /**
  * Corrects one reading: counter -> indicated elapsed time (exact) -> the fixed point of
  * TT = anchor + indicated - (clock - TT)(TT), to below a femtosecond -> an instant rounded once to the picosecond.
- * Errors: ambiguous-rollover, reading-beyond-width, outside-span, impossible-clock (an oscillator that does not converge).
+ * Errors: ambiguous-rollover, reading-beyond-width, outside-span, impossible-clock (an oscillator that does not converge);
+ * those of correctThroughEvents for a clock with events.
  */
 export function correctReading(setting: Setting, reading: Reading, unwrap: Unwrap | null): CorrectedReading {
   const flags: Flag[] = [];
-  const { clock } = setting;
+  const { clock, timeline } = setting;
+  if (timeline !== null) return correctThroughEvents(setting, timeline, reading, unwrap);
   const indicated = indicatedSinceAnchor(setting, reading, unwrap, flags);
   const outside = (elapsed: Duration) =>
     outsideSpan(setting, "The reading", reading.written, whenInWords(setting, elapsed)).within("reading");
@@ -62,47 +67,15 @@ function withoutRelativity(setting: Setting, indicated: Duration): Duration {
 }
 
 function offByOscillator({ clock }: Setting, elapsed: Duration): Duration {
-  const terms = oscillatorTerms(clock.oscillator, toTwoPartSeconds(elapsed), 1);
+  const terms = oscillatorTerms(clock.oscillator, unbroken(toTwoPartSeconds(elapsed)), 1);
   return sumDurations([...terms.map(({ accumulated }) => accumulated), latchOf(clock)]);
-}
-
-/** Solves elapsed + off(elapsed) = indicated, to the femtosecond. Errors: impossible-clock when it does not settle. */
-function fixedPoint(indicated: Duration, off: (elapsed: Duration) => Duration): Duration {
-  let elapsed = indicated;
-  let moved = zeroDuration;
-  for (let i = 0; i < mostIterations; i++) {
-    const next = subtractDurations(indicated, off(elapsed));
-    moved = subtractDurations(next, elapsed);
-    elapsed = next;
-    if (moved.seconds === 0 && moved.femtoseconds === 0) return elapsed;
-    // Two neighbours a femtosecond apart may alternate; either is right.
-    if (i > 2 && Math.abs(toSeconds(moved)) < 1.5e-15) return elapsed;
-    if (Math.abs(elapsed.seconds) > 1e11) return elapsed; // outside all that is covered; the caller refuses it
-  }
-  const left = Math.abs(toSeconds(moved)).toExponential(1);
-  throw new Problem(
-    "impossible-clock",
-    `The oscillator moves too far from its nominal rate at this reading to be inverted (${left} s left after ${mostIterations} steps).`,
-    [{ place: ["reading"], expected: "a reading at which ageing has moved the rate by less than some percent" }],
-  );
-}
-
-function whenInWords(setting: Setting, elapsed: Duration): string {
-  const { clock, leapSeconds } = setting;
-  const at = addDuration(clock.anchor.at, elapsed);
-  if (isCovered(at, leapSeconds)) return `at ${formatInstant(at, "UTC", leapSeconds)}`;
-  const seconds = toSeconds(elapsed);
-  return `${Math.abs(seconds).toPrecision(6)} s ${seconds < 0 ? "before" : "after"} the anchor`;
 }
 
 /** What the clock has counted since the anchor's instant: exact, with the rollovers put back. */
 function indicatedSinceAnchor(setting: Setting, reading: Reading, unwrap: Unwrap | null, flags: Flag[]): Duration {
-  const { face, anchor } = setting.clock;
+  const { face } = setting.clock;
   const { indicated } = reading;
-  if (face.kind === "stamp") {
-    invariant(typeof indicated !== "bigint", "a stamped clock is read as a moment");
-    return durationBetween(anchor.at, indicated);
-  }
+  if (face.kind === "stamp") return indicatedSpan(setting.clock, indicated);
   invariant(typeof indicated === "bigint", "a counter is read as ticks");
   return ticksToDuration(elapsedTicks(setting, face, indicated, reading, unwrap, flags), face.ticksPerSecond);
 }
@@ -125,15 +98,6 @@ function elapsedTicks(
       : turnsByRule(setting, face, difference, modulus, unwrap, written);
   if (turns !== 0n) flags.unshift("rollover");
   return difference + turns * modulus;
-}
-
-/** Whether a value can stand on a counter of so many bits. */
-export const fits = (value: bigint, widthBits: number): boolean => value >= 0n && value < counterModulus(widthBits);
-
-export function beyondWidth(reading: bigint, widthBits: number): Problem {
-  return new Problem("reading-beyond-width", `The reading ${reading} does not fit a counter of ${widthBits} bits.`, [
-    { place: [], received: String(reading), expected: `0 to 2^${widthBits} - 1 = ${counterModulus(widthBits) - 1n}` },
-  ]);
 }
 
 /** The number of rollovers that brings the reading nearest to a rough time. */
@@ -169,12 +133,6 @@ function turnsNear(
   const fromMiddle = modulus - 2n * (rest < 0n ? -rest : rest);
   if (fromMiddle * 1000n < modulus) flags.push("ambiguous-rollover");
   return turns;
-}
-
-function roundedQuotient(a: bigint, b: bigint): bigint {
-  const twice = 2n * a + b;
-  const q = twice / (2n * b);
-  return twice < 0n && twice % (2n * b) !== 0n ? q - 1n : q;
 }
 
 function turnsByRule(

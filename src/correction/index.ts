@@ -1,4 +1,5 @@
 export { type DriftBudget, driftBudget, type TermBudget } from "./budget.ts";
+export type { ClockEvent, EventEffect } from "./clockEvent.ts";
 export { isInside, outsideSpan } from "./clockState.ts";
 export { correctReading } from "./correct.ts";
 export { canonicalDigest, type Evidence, makeEvidence } from "./evidence.ts";

@@ -2,6 +2,8 @@ import type { Counter, Oscillator } from "../clock/index.ts";
 import type { Trajectory } from "../orbit/index.ts";
 import type { ProperTime } from "../relativity/index.ts";
 import type { Duration, Instant, LeapSecondTable } from "../time/index.ts";
+import type { ClockEvent, Indication } from "./clockEvent.ts";
+import type { Timeline } from "./stretch.ts";
 
 /** What a clock shows: ticks counted since some moment, or the time itself as it knows it. */
 export type Face =
@@ -12,8 +14,7 @@ export type Face =
       readonly resolution: number | null;
     };
 
-/** A reading freed of its writing: ticks of a counter, or the moment that a stamp names. */
-export type Indication = bigint | Instant;
+export type { Indication };
 
 /** A clock as the corrections see it. A stamped clock's offset at the anchor is part of its oscillator's offset. */
 export interface Clock {
@@ -24,6 +25,8 @@ export interface Clock {
     readonly sigma: number | null;
   };
   readonly oscillator: Oscillator | null;
+  /** What touched the clock, in any order. */
+  readonly events: readonly ClockEvent[];
 }
 
 /** A trajectory computed ahead, or afterwards from measurements. */
@@ -50,12 +53,18 @@ export interface Setting {
   readonly basis: Basis | null;
   /** What was given of the Earth's orientation. */
   readonly given: { readonly ut1: boolean; readonly pole: boolean };
+  /** The clock's life about its anchor; null when nothing touched it. */
+  readonly timeline: Timeline | null;
 }
 
 export type Flag =
   | "rollover"
   | "ambiguous-rollover"
   | "before-anchor"
+  | "clock-event"
+  | "slewing"
+  | "locked"
+  | "holdover"
   | "predicted-orbit"
   | "implausible-orbit"
   | "coarse-ephemeris"

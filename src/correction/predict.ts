@@ -1,12 +1,13 @@
 import { counterModulus, durationToTicks, tickSeconds, wrap } from "../clock/index.ts";
 import { addDuration, addDurations, durationBetween, formatInstant, type Instant } from "../time/index.ts";
 import { clockStateAt, isInside, outsideSpan } from "./clockState.ts";
+import { requireModelAt } from "./eventReading.ts";
 import type { Flag, PredictedReading, Setting } from "./model.ts";
 
 /**
  * What the counter shows at an instant: the inverse of correctReading. The latch belongs to a reading, not to the clock,
  * so it is not among the terms; what lies beyond the shown value is `fraction`.
- * Errors: outside-span.
+ * Errors: outside-span, anchor-needed.
  */
 export function predictReading(setting: Setting, instant: Instant): PredictedReading {
   const { clock } = setting;
@@ -15,6 +16,7 @@ export function predictReading(setting: Setting, instant: Instant): PredictedRea
     throw outsideSpan(setting, "The instant", text, `at ${text}`);
   }
   const elapsed = durationBetween(clock.anchor.at, instant);
+  requireModelAt(setting, elapsed);
   const flags: Flag[] = [];
   const state = clockStateAt(setting, elapsed, false, []);
   const { face } = clock;

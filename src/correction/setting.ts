@@ -12,8 +12,9 @@ import {
   secondsBetween,
 } from "../time/index.ts";
 import { isInside, outsideSpan } from "./clockState.ts";
-import { beyondWidth, fits } from "./correct.ts";
+import { beyondWidth, fits } from "./indication.ts";
 import type { Basis, Clock, Setting } from "./model.ts";
+import { buildTimeline } from "./timeline.ts";
 
 /** UT1 - UTC (s) and pole coordinates (rad); null: not given. */
 export interface GivenOrientation {
@@ -48,7 +49,7 @@ export function buildProperTime(request: PathRequest, leapSeconds: LeapSecondTab
   return new ProperTime(trajectory, terms, Math.min(trajectory.to, Math.max(trajectory.from, origin)));
 }
 
-/** Ties a clock to a path. Errors: outside-span (the anchor), reading-beyond-width (its reading). */
+/** Ties a clock to a path. Errors: outside-span (the anchor), reading-beyond-width (its reading), those of its events. */
 export function makeSetting(
   clock: Clock,
   properTime: ProperTime,
@@ -68,12 +69,13 @@ export function makeSetting(
     window: usableWindow(trajectory, leapSeconds),
     basis: given.basis,
     given: orientationGiven(given.orientation),
+    timeline: null,
   };
   if (!isInside(setting, clock.anchor.at)) {
     const text = formatInstant(clock.anchor.at, "UTC", leapSeconds);
     throw outsideSpan(setting, "The anchor", text, `at ${text}`).within("clock", "anchor", "at");
   }
-  return setting;
+  return { ...setting, timeline: buildTimeline(setting) };
 }
 
 /** The trajectory's span inside the years that are covered. */

@@ -2,6 +2,7 @@ import { oscillatorSigmas, tickSeconds } from "../clock/index.ts";
 import { ARCSECOND, C2, DAY, EARTH_ROTATION, GM_EARTH } from "../units/index.ts";
 import { anchorTime } from "./clockMinusTt.ts";
 import type { Face, Setting, UncertaintyItem } from "./model.ts";
+import { freeSpans, type Stretch } from "./stretch.ts";
 
 /** 0.9 s, the largest |UT1 - UTC|, as a rectangular distribution: its angle in rad. */
 const unknownRotation = (0.9 / Math.sqrt(3)) * EARTH_ROTATION;
@@ -14,28 +15,44 @@ const unknownPole = 0.3 * ARCSECOND;
  * Only what is known or modelled is listed; nothing is invented for what was not given.
  * Source: JCGM 100:2008, 4.3 and 5.1 (independent contributions, combined in quadrature).
  */
-export function uncertaintyItems(setting: Setting, elapsed: number, asRead: boolean): UncertaintyItem[] {
+export function uncertaintyItems(
+  setting: Setting,
+  elapsed: number,
+  asRead: boolean,
+  stretch: Stretch | null,
+): UncertaintyItem[] {
   const { clock, trajectory } = setting;
   const start = anchorTime(setting);
-  const end = Math.min(setting.window.to, Math.max(setting.window.from, start + elapsed));
+  const clipped = (since: number): number => Math.min(setting.window.to, Math.max(setting.window.from, start + since));
+  // While locked to its scale nothing grows; without events there is one span, from the anchor on.
+  const spans = freeSpans(stretch, elapsed);
+  const over = (work: (from: number, to: number) => number): number =>
+    spans.reduce((sum, [from, to]) => sum + work(from, to), 0);
+  const free = over((from, to) => to - from);
   const out: UncertaintyItem[] = [];
   const item = (source: string, sigma: number, shared: UncertaintyItem["shared"]) =>
     out.push({ source, type: "B", sigma, shared });
   if (clock.anchor.sigma !== null) item("anchor", clock.anchor.sigma, "log");
-  for (const { source, sigma } of oscillatorSigmas(clock.oscillator, elapsed)) item(source, sigma, "log");
+  const squares = over((from, to) => (to - from) ** 2);
+  for (const { source, sigma } of oscillatorSigmas(clock.oscillator, free, squares)) item(source, sigma, "log");
+  if (stretch !== null && stretch.variance > 0) item("event", Math.sqrt(stretch.variance), "log");
   const { modelError } = trajectory;
-  const lever = trajectory.energyLever(start, end);
-  const orbit = orbitSigma(setting, lever, elapsed);
+  const lever = over((from, to) => trajectory.energyLever(clipped(from), clipped(to)));
+  const orbit = orbitSigma(setting, lever, free);
   if (orbit !== null) item("orbit", orbit, "log");
-  const [before, after] = [modelError.drag(start), modelError.drag(end)];
-  const dragged = Math.sign(start) * Math.sign(end) < 0 ? before + after : Math.abs(after - before);
-  item("force-model", Math.hypot(modelError.fieldTruncation(elapsed), modelError.energyRate * lever, dragged), "log");
-  const turned = earthOrientationSigma(setting, elapsed);
+  const dragged = over((since, until) => {
+    const [from, to] = [clipped(since), clipped(until)];
+    const [before, after] = [modelError.drag(from), modelError.drag(to)];
+    return Math.sign(from) * Math.sign(to) < 0 ? before + after : Math.abs(after - before);
+  });
+  item("force-model", Math.hypot(modelError.fieldTruncation(free), modelError.energyRate * lever, dragged), "log");
+  const turned = earthOrientationSigma(setting, free);
   if (turned > 0) item("earth-orientation", turned, "log");
   // 1e-17 s a segment of the integral (about one an hour), and what the reading of the table costs.
   item(
     "integration",
-    Math.abs(trajectory.interpolationError(start, end)) + 1e-17 * (1 + Math.abs(elapsed) / 3600),
+    over((from, to) => Math.abs(trajectory.interpolationError(clipped(from), clipped(to)))) +
+      1e-17 * (1 + Math.abs(free) / 3600),
     "log",
   );
   const step = faceStep(clock.face);
@@ -44,7 +61,7 @@ export function uncertaintyItems(setting: Setting, elapsed: number, asRead: bool
 }
 
 /** The step in which a face hides the time, s; null when a reading marks its own moment. */
-function faceStep(face: Face): number | null {
+export function faceStep(face: Face): number | null {
   if (face.kind === "stamp") return face.resolution;
   return face.stands === "edge" ? null : tickSeconds(face.ticksPerSecond);
 }

@@ -72,6 +72,21 @@ export const problemCatalogue = {
     title: "A counter value could mean more than one time",
     remedy: 'Give "near" (a rough time of the reading) or "unwrap": "after", "before" or "nearest".',
   },
+  "ambiguous-reading": {
+    status: 422,
+    title: "A clock that was put back showed a reading more than once",
+    remedy: 'Give "near" (a rough time of the reading) or "unwrap": "after", "before" or "nearest".',
+  },
+  "reading-not-shown": {
+    status: 422,
+    title: "A clock event passed over a reading, so the clock never showed it",
+    remedy: "Check the reading and the event that the detail names: its instant, its size and its sign.",
+  },
+  "anchor-needed": {
+    status: 422,
+    title: "A clock event ends the model, and what was asked lies beyond it",
+    remedy: "Give a clock with an anchor on that side of the event; the detail names the event and its instant.",
+  },
   "impossible-state": {
     status: 422,
     title: "A position and velocity cannot belong to a clock that this service computes",

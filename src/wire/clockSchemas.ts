@@ -81,6 +81,52 @@ const oscillatorSchema = z
   })
   .openapi("Oscillator");
 
+/** What every event has: when, how sure, and whose doing. */
+const eventFields = {
+  at: instantSchema.optional(),
+  atReading: readingSchema.optional().openapi({
+    description:
+      "What the clock showed just before the event, in place of `at`; found at or after the anchor, with the events before it.",
+  }),
+  sigmaNs: sigma
+    .optional()
+    .openapi({ description: "Of what the event did to the clock; joins the uncertainty after it." }),
+  origin: z.enum(["commanded", "found"]).optional(),
+};
+
+const stepNs = number.min(-1e18).max(1e18).openapi({ description: "Positive: the clock then shows more." });
+
+/** Kinds of clock events that need nothing besides. */
+const bare = ["oscillator", "reset", "locked", "free"] as const;
+
+const clockEventSchema = z
+  .discriminatedUnion("kind", [
+    z.strictObject({ kind: z.literal("set"), ...eventFields, toReading: readingSchema }),
+    z.strictObject({ kind: z.literal("step"), ...eventFields, stepNs }),
+    z.strictObject({ kind: z.literal("leap-second"), ...eventFields, stepNs }),
+    z.strictObject({
+      kind: z.literal("rate"),
+      ...eventFields,
+      fractionalChange: number
+        .gt(-0.01)
+        .lt(0.01)
+        .openapi({ description: "Of the fractional frequency, against proper time, from then on." }),
+    }),
+    z.strictObject({
+      kind: z.literal("slew"),
+      ...eventFields,
+      stepNs,
+      durationS: number.min(1e-3).max(1e9).openapi({ description: "How long it takes to gain stepNs evenly." }),
+    }),
+    ...bare.map((kind) => z.strictObject({ kind: z.literal(kind), ...eventFields })),
+  ])
+  .openapi("ClockEvent", {
+    description:
+      "Somebody or something touched the clock. Exactly one of at and atReading. set: from then on it shows toReading; step and leap-second: it jumps by stepNs; slew: it gains stepNs evenly; rate: its frequency changes; locked: it follows its scale, nothing accumulates, its offset stays; free: it runs free again and the oscillator's polynomial starts anew (rate changes stay); reset and oscillator: the model ends there, as it does backwards at a set before the anchor.",
+  });
+
+export type ClockEventIn = z.infer<typeof clockEventSchema>;
+
 export const clockSchema = z
   .strictObject({
     counter: counterSchema.optional(),
@@ -96,6 +142,7 @@ export const clockSchema = z
       })
       .openapi("Anchor", { description: "The reading and the instant at which the clock model starts." }),
     oscillator: oscillatorSchema.optional(),
+    events: z.array(clockEventSchema).max(1000).optional().openapi({ description: "In any order." }),
   })
   .openapi("Clock", { description: "Exactly one of counter, timeStamp and timeCode says what its readings are." });
 

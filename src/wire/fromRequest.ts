@@ -11,6 +11,7 @@ import {
   type LeapSecondTable,
 } from "../time/index.ts";
 import { ARCSECOND, DAY, DEGREE, KM, NS } from "../units/index.ts";
+import { readEvents } from "./clockEvents.ts";
 import { type FaceWriter, readAnchor, readFace } from "./clockFace.ts";
 import type { ClockIn } from "./clockSchemas.ts";
 import type { CorrectionRequest, PredictionRequest } from "./correctionSchemas.ts";
@@ -36,6 +37,7 @@ export function readClock(given: ClockIn, leapSeconds: LeapSecondTable): { clock
     face,
     anchor: { at: instant, sigma: orNull(given.anchor.sigmaNs, NS) },
     oscillator: typeof shown === "bigint" ? oscillator : withStampOffset(oscillator, durationBetween(instant, shown)),
+    events: readEvents(given.events, writer, face, leapSeconds),
   };
   return { clock, writer };
 }

@@ -78,13 +78,20 @@ export const flagSchema = z
     "rollover",
     "ambiguous-rollover",
     "before-anchor",
+    "clock-event",
+    "slewing",
+    "locked",
+    "holdover",
     "predicted-orbit",
     "implausible-orbit",
     "coarse-ephemeris",
     "leap-second",
     "leap-table-expired",
   ])
-  .openapi("Flag", { description: "A short word that says why to distrust a row, or how it was read." });
+  .openapi("Flag", {
+    description:
+      "A short word that says why to distrust a row, or how it was read. clock-event: within one second (or one tick, if longer) after the clock was set or stepped; slewing: inside a slew; locked: the clock followed its scale; holdover: it runs free after that.",
+  });
 
 export const noticeSchema = z
   .strictObject({ code: z.string(), text: z.string(), pointer: z.string().optional() })

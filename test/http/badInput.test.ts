@@ -1130,10 +1130,16 @@ describe("failures that are not the request's", () => {
   });
 
   it("every code of the catalogue is produced by a case here or in the file of its call", () => {
-    // Calls with test files of their own: budgets, conversions, messages.
-    const elsewhere = ["horizon-too-long", "invalid-time-code", "invalid-message", "unusable-message"].filter(
-      (code) => code in problemCatalogue,
-    );
+    // Calls with test files of their own: budgets, conversions, messages, clock events.
+    const elsewhere = [
+      "horizon-too-long",
+      "invalid-time-code",
+      "invalid-message",
+      "unusable-message",
+      "ambiguous-reading",
+      "reading-not-shown",
+      "anchor-needed",
+    ].filter((code) => code in problemCatalogue);
     const produced = new Set<string>([...cases.map(({ code }) => code), "internal-error", "unavailable", ...elsewhere]);
     expect([...produced].sort()).toEqual(Object.keys(problemCatalogue).sort());
     for (const { code, status } of cases) expect(status).toBe(problemCatalogue[code].status);

@@ -1,5 +1,5 @@
 import { geodeticToFixed } from "../../src/bodies/index.ts";
-import { durationToTicks, oscillatorTerms, rational } from "../../src/clock/index.ts";
+import { durationToTicks, oscillatorTerms, rational, unbroken } from "../../src/clock/index.ts";
 import { buildTrajectory, type KeplerianElements, type Trajectory, twoBodyState } from "../../src/orbit/index.ts";
 import { type PhysicalTermName, ProperTime, type RateTerm, rateTerms } from "../../src/relativity/index.ts";
 import { addDurations, addSeconds, type Duration, defaultLeapSeconds, parseInstant } from "../../src/time/index.ts";
@@ -81,7 +81,7 @@ export function presetTerm(preset: number, properSeconds: number): { rate: numbe
     agingSigma: null,
     covariance: null,
   };
-  return oscillatorTerms(oscillator, { high: properSeconds, low: 0 }, 1)[0]!;
+  return oscillatorTerms(oscillator, unbroken({ high: properSeconds, low: 0 }), 1)[0]!;
 }
 
 /** Ticks a second of proper time that a counter with a preset shows, counted over a million seconds. */
