@@ -14,6 +14,9 @@ import { ARCSECOND } from "../units/index.ts";
 export const frames = ["GCRF", "EME2000", "ICRF", "TEME", "TOD", "ITRF"] as const;
 export type Frame = (typeof frames)[number];
 
+/** Whether a frame's axes can stand about another body than the Earth. */
+export const isFreeOfEarth = (frame: Frame): boolean => frame === "GCRF" || frame === "ICRF" || frame === "EME2000";
+
 /**
  * From GCRF to the mean equator and equinox of J2000.0: R1(-d_eps) R2(d_psi sin eps0) R3(d_alpha0), 23 milliarcseconds.
  * Source: IERS Conventions (2010) eqs. 5.21, 5.22; obliquity 84381.406 arcseconds.

@@ -8,7 +8,7 @@ export type {
   TrajectoryDescription,
 } from "./description.ts";
 export { type OsculatingElements, osculatingElements } from "./elements.ts";
-export { type Frame, frames, type Kinematics } from "./frames.ts";
+export { type Frame, frames, isFreeOfEarth, type Kinematics } from "./frames.ts";
 export { innermost } from "./propagated.ts";
 export type { TableMethod } from "./table.ts";
 export type { OrbitError, StateArray, Trajectory } from "./trajectory.ts";

@@ -2,6 +2,7 @@ import { type EarthAxes, moonRotation, moonTable } from "../bodies/index.ts";
 import { axisRotation, cross, multiplyTransposed, product, type Vec3 } from "../numeric/index.ts";
 import { type Instant, ttSecondsSinceJ2000 } from "../time/index.ts";
 import { DAY } from "../units/index.ts";
+import { halve } from "./surface.ts";
 import type { ModelError, StateArray, Trajectory } from "./trajectory.ts";
 
 /** Sphere above which lunar heights are counted, m. Source: IAU working group (2015), mean radius of the Moon. */
@@ -74,7 +75,7 @@ export class MoonSurfaceTrajectory implements Trajectory {
 
   pieceOf = (t: number): number => Math.floor(t / pieceLength);
   pieceStart = (index: number): number => index * pieceLength;
-  split = (a: number, b: number): number | null => (b - a <= 2 ? null : (a + b) / 2);
+  split = halve;
   energyLever = (a: number, b: number): number => Math.abs(b - a);
   interpolationError = (): number => 0;
 }

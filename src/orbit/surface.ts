@@ -1,13 +1,13 @@
 import type { EarthAxes } from "../bodies/index.ts";
-import { cross, multiplyTransposed, type Vec3 } from "../numeric/index.ts";
+import type { Vec3 } from "../numeric/index.ts";
 import type { Instant } from "../time/index.ts";
 import type { ModelError, StateArray, Trajectory } from "./trajectory.ts";
 
 const pieceLength = 86_400;
 const shortestCut = 1;
 
-/** Cuts at multiples of the second when a piece needs it. */
-function halve(a: number, b: number): number | null {
+/** Cuts a stretch of a clock on the ground in the middle, down to two seconds. */
+export function halve(a: number, b: number): number | null {
   return b - a <= 2 * shortestCut ? null : (a + b) / 2;
 }
 
@@ -18,14 +18,9 @@ function heightTruncation(metres: number): ModelError {
 
 /** Writes an Earth-fixed position and velocity to `out` in GCRF. */
 function writeInertial(axes: EarthAxes, t: number, position: Vec3, velocity: Vec3, out: StateArray): void {
-  const rotation = axes.rotation(t);
-  const inertial = multiplyTransposed(rotation, position);
-  const relative = multiplyTransposed(rotation, velocity);
-  const carried = cross(axes.angularVelocity(t), inertial);
-  for (let k = 0; k < 3; k++) {
-    out[k] = inertial[k]!;
-    out[k + 3] = relative[k]! + carried[k]!;
-  }
+  const inertial = axes.toInertial(t, position, velocity);
+  out.set(inertial.position);
+  out.set(inertial.velocity, 3);
 }
 
 /**

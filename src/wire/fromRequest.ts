@@ -1,6 +1,6 @@
 import type { Oscillator } from "../clock/index.ts";
 import type { Clock, GivenOrientation, PathRequest, Reading } from "../correction/index.ts";
-import type { Center, Frame, StateError, TrajectoryDescription } from "../orbit/index.ts";
+import { type Center, type Frame, isFreeOfEarth, type StateError, type TrajectoryDescription } from "../orbit/index.ts";
 import { at, forEachItem, type Notice, Problem } from "../problem/index.ts";
 import {
   addDurations,
@@ -211,7 +211,7 @@ function readPlainTrajectory(given: PlainIn, leapSeconds: LeapSecondTable): Traj
 
 /** Errors: impossible-state for axes that turn with the Earth about another body. */
 function readCenter({ center = "Earth", frame }: { center?: Center | undefined; frame: Frame }): Center {
-  if (center === "Moon" && !["GCRF", "ICRF", "EME2000"].includes(frame)) {
+  if (center === "Moon" && !isFreeOfEarth(frame)) {
     throw new Problem("impossible-state", `${frame} is no frame about the Moon.`, [
       { place: ["frame"], received: frame, expected: "ICRF, GCRF or EME2000" },
     ]);

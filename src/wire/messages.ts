@@ -13,13 +13,14 @@ import {
   parseTle,
   type Tle,
 } from "../formats/index.ts";
-import type {
-  Center,
-  Frame,
-  SegmentDescription,
-  StateError,
-  TableMethod,
-  TrajectoryDescription,
+import {
+  type Center,
+  type Frame,
+  isFreeOfEarth,
+  type SegmentDescription,
+  type StateError,
+  type TableMethod,
+  type TrajectoryDescription,
 } from "../orbit/index.ts";
 import { at, type Notice, type Place, Problem } from "../problem/index.ts";
 import type { Instant, LeapSecondTable } from "../time/index.ts";
@@ -153,7 +154,7 @@ function readSegment(segment: OemSegment, notices: Notice[], leapSeconds: LeapSe
   }
   const frame = readFrame(metadata.refFrame);
   const center = readCenter(metadata.centerName);
-  if (center === "Moon" && !["GCRF", "ICRF", "EME2000"].includes(frame)) {
+  if (center === "Moon" && !isFreeOfEarth(frame)) {
     throw unusable([], `${frame} is no frame about the Moon.`, "REF_FRAME ICRF, GCRF or EME2000");
   }
   return {
